@@ -1,0 +1,62 @@
+"""Section mechanics and code checks of reinforced concrete beams; needs no solver."""
+
+from engine.assessment import Assessment, Batch, assess, required_share
+from engine.checks import Check, CheckedLayout, State, check_layout, check_layouts
+from engine.cover import Exposure
+from engine.cracked_section import CrackedSection, cracked_section
+from engine.editions import EDITIONS, Edition, edition
+from engine.errors import (
+    EngineError,
+    LayoutError,
+    OutOfRangeError,
+    QuantityError,
+    UnknownEditionError,
+)
+from engine.flange_width import Slab, effective_flange_width
+from engine.layouts import Layer, Layout, parse_layout
+from engine.materials import Concrete, Steel
+from engine.outlines import Flange, Outline, Profile
+from engine.placement import Placement, place
+from engine.sections import Section
+from engine.strength import BarGroups, FlexuralState, flexural_state
+from engine.units import parse_quantity
+
+__all__ = [
+    "EDITIONS",
+    "Assessment",
+    "BarGroups",
+    "Batch",
+    "Check",
+    "CheckedLayout",
+    "Concrete",
+    "CrackedSection",
+    "Edition",
+    "EngineError",
+    "Exposure",
+    "Flange",
+    "FlexuralState",
+    "Layer",
+    "Layout",
+    "LayoutError",
+    "OutOfRangeError",
+    "Outline",
+    "Placement",
+    "Profile",
+    "QuantityError",
+    "Section",
+    "Slab",
+    "State",
+    "Steel",
+    "UnknownEditionError",
+    "assess",
+    "check_layout",
+    "check_layouts",
+    "cracked_section",
+    "edition",
+    "effective_flange_width",
+    "flexural_state",
+    "parse_layout",
+    "parse_quantity",
+    "place",
+    "required_share",
+]

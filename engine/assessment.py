@@ -1,0 +1,380 @@
+"""Everything about many layouts of one section that numpy can say at once.
+
+The search asks it of thousands of layouts, the check of a single one: there is one
+implementation. What depends on the bars' horizontal positions (clear gaps, spacing) is in
+`engine.placement`.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from catalogs import Bar
+from engine.crack_control import WITHOUT_ANALYSIS
+from engine.cracked_section import cracked_section
+from engine.layouts import Layout
+from engine.materials import EPS_CU
+from engine.minimum_steel import EXEMPTION, minimum_area
+from engine.outlines import FloatArray
+from engine.sections import Section
+from engine.strength import BarGroups, FlexuralState, flexural_state
+from engine.strength_reduction import least_strain, phi
+
+ROUNDING = 1e-9
+"""Relative slack of comparisons, for floating point only. [-]"""
+_ROOT_PRECISION = 1e-9  # relative error of the moment at the required area
+_STEPS = 60
+_STEPS_UP = np.geomspace(1.05, 8.0, 24)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Batch:
+    """Many layouts made of a few sizes.
+
+    Attributes
+    ----------
+    bars : tuple of Bar, length s
+        Sizes that occur.
+    counts : ndarray of int, shape (n, l, s)
+        Number of bars of each size in each layer; layer 1 first, missing layers are zero.
+    """
+
+    bars: tuple[Bar, ...]
+    counts: NDArray[np.int64]
+
+    @classmethod
+    def of(cls, layouts: Sequence[Layout]) -> Batch:
+        """Gather layouts.
+
+        Parameters
+        ----------
+        layouts : sequence of Layout
+            At least one.
+
+        Returns
+        -------
+        Batch
+            The same layouts in order.
+        """
+        found = {bar.position: bar for layout in layouts for bar in layout.sizes}
+        bars = tuple(found[position] for position in sorted(found, reverse=True))
+        column = {bar.position: index for index, bar in enumerate(bars)}
+        layers = max(len(layout.layers) for layout in layouts)
+        counts = np.zeros((len(layouts), layers, len(bars)), dtype=np.int64)
+        for row, layout in enumerate(layouts):
+            for number, layer in enumerate(layout.layers):
+                for bar, count in layer.groups:
+                    counts[row, number, column[bar.position]] = count
+        return cls(bars=bars, counts=counts)
+
+    def quantity(self, values: Sequence[float]) -> FloatArray:
+        """Sum a value of each size over all bars.
+
+        Parameters
+        ----------
+        values : sequence of float, length s
+            Value of one bar of each size.
+
+        Returns
+        -------
+        ndarray, shape (n,)
+            Totals.
+        """
+        total: FloatArray = self.counts.sum(axis=1) @ np.asarray(values, dtype=np.float64)
+        return total
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Assessed:
+    """One row of an `Assessment`, in plain numbers."""
+
+    As: float
+    As_min: float
+    d: float
+    dt: float
+    a: float
+    c: float
+    Mn: float
+    eps_t: float
+    phi: float
+    phi_Mn: float
+    height: float
+    strong: bool
+    ductile: bool
+    enough_steel: bool
+    stack_fits: bool
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Assessment:
+    """Strength, ductility and minimum steel of many layouts, each array of shape (n,).
+
+    Attributes
+    ----------
+    As, As_min : ndarray
+        Steel area, and 9.6.1.2 at the layout's d. [in^2 or mm^2]
+    d, dt : ndarray
+        Depth of the centroid of all bars, and of those of layer 1. [in or mm]
+    state : FlexuralState
+        Neutral axis, block and nominal moment.
+    eps_t : ndarray
+        Net tensile strain at dt. [-]
+    phi, phi_Mn : ndarray
+        Reduction factor and design strength. [-], [lbf*in or N*mm]
+    height : ndarray
+        Distance of the innermost bar surface from the tension face. [in or mm]
+    strong, ductile, enough_steel, stack_fits : ndarray of bool
+        Verdicts of 9.5.1.1, of 9.3.3.1, of 9.6.1 and on the height of the stack.
+    """
+
+    As: FloatArray
+    As_min: FloatArray
+    d: FloatArray
+    dt: FloatArray
+    state: FlexuralState
+    eps_t: FloatArray
+    phi: FloatArray
+    phi_Mn: FloatArray
+    height: FloatArray
+    strong: NDArray[np.bool_]
+    ductile: NDArray[np.bool_]
+    enough_steel: NDArray[np.bool_]
+    stack_fits: NDArray[np.bool_]
+
+    @property
+    def passes(self) -> NDArray[np.bool_]:
+        """Rows with every verdict true."""
+        return self.strong & self.ductile & self.enough_steel & self.stack_fits
+
+    def row(self, index: int) -> Assessed:
+        """One layout's figures.
+
+        Parameters
+        ----------
+        index : int
+            Row of the batch.
+
+        Returns
+        -------
+        Assessed
+            Its figures as plain numbers.
+        """
+        return Assessed(
+            As=float(self.As[index]),
+            As_min=float(self.As_min[index]),
+            d=float(self.d[index]),
+            dt=float(self.dt[index]),
+            a=float(self.state.a[index]),
+            c=float(self.state.c[index]),
+            Mn=float(self.state.Mn[index]),
+            eps_t=float(self.eps_t[index]),
+            phi=float(self.phi[index]),
+            phi_Mn=float(self.phi_Mn[index]),
+            height=float(self.height[index]),
+            strong=bool(self.strong[index]),
+            ductile=bool(self.ductile[index]),
+            enough_steel=bool(self.enough_steel[index]),
+            stack_fits=bool(self.stack_fits[index]),
+        )
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Stacked:
+    """Bars of a batch with their depths; the first l*s columns are the batch's own."""
+
+    groups: BarGroups
+    own: int
+    dt: FloatArray
+    d: FloatArray
+    height: FloatArray
+
+
+def _stacked(section: Section, batch: Batch) -> _Stacked:
+    counts = batch.counts
+    rows, layers, sizes = counts.shape
+    diameter = np.array([bar.diameter for bar in batch.bars])
+    area = np.array([bar.area for bar in batch.bars])
+    tallest = np.where(counts > 0, diameter, 0.0).max(axis=2)
+    rise = np.where(tallest > 0.0, tallest + section.layer_gap, 0.0)
+    bottom = section.bar_face + np.concatenate(
+        (np.zeros((rows, 1)), np.cumsum(rise, axis=1)[:, :-1]), axis=1
+    )
+    depth = section.outline.depth - bottom[:, :, None] - diameter / 2
+    steel = counts * area
+    total = steel.sum(axis=(1, 2))
+    flat_area = steel.reshape(rows, layers * sizes)
+    flat_depth = depth.reshape(rows, layers * sizes)
+    flat_diameter = np.tile(diameter, (rows, layers))
+    if section.count_opposite and section.opposite is not None:
+        extra = _opposite_groups(section, section.opposite, rows)
+        flat_area = np.concatenate((flat_area, extra.area), axis=1)
+        flat_depth = np.concatenate((flat_depth, extra.depth), axis=1)
+        flat_diameter = np.concatenate((flat_diameter, extra.diameter), axis=1)
+    return _Stacked(
+        groups=BarGroups(area=flat_area, depth=flat_depth, diameter=flat_diameter),
+        own=layers * sizes,
+        dt=(steel[:, 0] * depth[:, 0]).sum(axis=1) / steel[:, 0].sum(axis=1),
+        d=(steel * depth).sum(axis=(1, 2)) / total,
+        height=(np.where(tallest > 0.0, bottom + tallest, 0.0)).max(axis=1),
+    )
+
+
+def _opposite_groups(section: Section, opposite: Layout, rows: int) -> BarGroups:
+    """Bars at the compression face: their depths count from that face."""
+    face = _stacked(section.opposite_face(), Batch.of([opposite]))
+    depth = section.outline.depth - face.groups.depth
+    return BarGroups(
+        area=np.tile(face.groups.area, (rows, 1)),
+        depth=np.tile(depth, (rows, 1)),
+        diameter=np.tile(face.groups.diameter, (rows, 1)),
+    )
+
+
+def _scaled(stacked: _Stacked, share: FloatArray, rows: NDArray[np.intp]) -> BarGroups:
+    """The layouts' own bars with their areas scaled; bars opposite stay as they are."""
+    area = stacked.groups.area[rows].copy()
+    area[:, : stacked.own] *= share[:, None]
+    return BarGroups(
+        area=area, depth=stacked.groups.depth[rows], diameter=stacked.groups.diameter[rows]
+    )
+
+
+def _design_strength(
+    section: Section, groups: BarGroups, dt: FloatArray
+) -> tuple[FlexuralState, FloatArray, FloatArray, FloatArray]:
+    state = flexural_state(section.profile, section.concrete, section.steel, groups)
+    eps_t = EPS_CU * (dt - state.c) / state.c
+    factor = phi(section.steel, eps_t)
+    return state, eps_t, factor, factor * state.Mn
+
+
+def assess(section: Section, batch: Batch) -> Assessment:
+    """Assess every layout of a batch in its section.
+
+    Parameters
+    ----------
+    section : Section
+        Section with its demand.
+    batch : Batch
+        Layouts at the section's tension face.
+
+    Returns
+    -------
+    Assessment
+        Strength, ductility and minimum steel of each.
+
+    Notes
+    -----
+    9.6.1.3 asks for As >= 4/3 of what analysis requires: with phi Mn rising with the area,
+    that is the same as three quarters of every bar being strong enough.
+    """
+    stacked = _stacked(section, batch)
+    own_area = stacked.groups.area[:, : stacked.own].sum(axis=1)
+    state, eps_t, factor, strength = _design_strength(section, stacked.groups, stacked.dt)
+    needed = section.demand * (1 - ROUNDING)
+    limit = least_strain(section.steel, tension_controlled=section.tension_controlled)
+    least = minimum_area(section, stacked.d)
+    enough = own_area >= least * (1 - ROUNDING)
+    short = np.flatnonzero(~enough)
+    if short.size:
+        share = np.full(len(short), EXEMPTION)
+        groups = _scaled(stacked, share, short)
+        enough[short] = _design_strength(section, groups, stacked.dt[short])[3] >= needed
+    return Assessment(
+        As=own_area,
+        As_min=least,
+        d=stacked.d,
+        dt=stacked.dt,
+        state=state,
+        eps_t=eps_t,
+        phi=factor,
+        phi_Mn=strength,
+        height=stacked.height,
+        strong=strength >= needed,
+        ductile=eps_t >= limit * (1 - ROUNDING),
+        enough_steel=enough,
+        stack_fits=stacked.height - section.bar_face <= section.stack_height + ROUNDING,
+    )
+
+
+def required_share(section: Section, batch: Batch) -> FloatArray:
+    """Share of each layout's bars that brings phi Mn to Mu at the same depths.
+
+    Parameters
+    ----------
+    section : Section
+        Section with its demand.
+    batch : Batch
+        Layouts at the section's tension face.
+
+    Returns
+    -------
+    ndarray, shape (n,)
+        Required over provided area; infinite where more of the same bars ends below the least
+        permitted strain before it reaches Mu. [-]
+    """
+    stacked = _stacked(section, batch)
+    rows = np.arange(len(stacked.d))
+    limit = least_strain(section.steel, tension_controlled=section.tension_controlled)
+
+    def excess(share: FloatArray) -> tuple[FloatArray, FloatArray]:
+        """Strength beyond Mu, and eps_t."""
+        groups = _scaled(stacked, share, rows)
+        _, strain, _, strength = _design_strength(section, groups, stacked.dt)
+        return strength - section.demand, strain
+
+    low, high = np.zeros(len(rows)), np.ones(len(rows))
+    below = np.full(len(rows), -section.demand)
+    above, strain = excess(high)
+    # Where the layout is too weak more of it is tried, as long as it stays ductile enough.
+    for step in _STEPS_UP:
+        rising = (above < 0.0) & (strain >= limit)
+        if not rising.any():
+            break
+        low, below = np.where(rising, high, low), np.where(rising, above, below)
+        high = np.where(rising, step, high)
+        value, strain_there = excess(high)
+        above = np.where(rising, value, above)
+        strain = np.where(rising, strain_there, strain)
+    found = above >= 0.0
+    share = high
+    # False position with the Illinois rule: the retained end's value is halved.
+    for _ in range(_STEPS):
+        with np.errstate(invalid="ignore"):
+            share = np.where(found, high - above * (high - low) / (above - below), 1.0)
+        value, _ = excess(share)
+        if (~found | (np.abs(value) <= _ROOT_PRECISION * section.demand)).all():
+            break
+        up = value >= 0.0
+        low, high = np.where(up, low, share), np.where(up, share, high)
+        below, above = np.where(up, below / 2, value), np.where(up, value, above / 2)
+    return np.where(found, share, np.inf)
+
+
+def service_stress(section: Section, batch: Batch) -> FloatArray:
+    """Stress, at service, of the bars nearest the tension face, 24.3.2.1.
+
+    Parameters
+    ----------
+    section : Section
+        Section, with its service moment where that is known.
+    batch : Batch
+        Layouts at the section's tension face.
+
+    Returns
+    -------
+    ndarray, shape (n,)
+        From the elastic cracked section under Ms, at dt; or 2/3 fy without Ms. [psi or MPa]
+    """
+    if section.Ms is None:
+        return np.full(len(batch.counts), WITHOUT_ANALYSIS * section.steel.fy)
+    stacked = _stacked(section, batch)
+    n = section.steel.Es / section.concrete.Ec
+    transformed = n * stacked.groups.area
+    transformed[:, stacked.own :] *= (n - 1.0) / n
+    cracked = cracked_section(section.profile, transformed, stacked.groups.depth)
+    return n * abs(section.Ms) * (stacked.dt - cracked.x) / cracked.Icr

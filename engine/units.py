@@ -1,0 +1,303 @@
+"""Quantities as the trade writes them, and the two consistent systems used inside.
+
+Everything inside the engine is a plain float in one of two systems, chosen by the edition
+of the code and never mixed: ``us`` (in, lbf, psi) and ``si`` (mm, N, MPa). Texts with
+units are turned into those floats here, and only here; exact rational factors are used so
+that ``"24 in"`` becomes 24.0 and not its neighbour.
+"""
+
+from __future__ import annotations
+
+import difflib
+import math
+import re
+from dataclasses import dataclass
+from fractions import Fraction
+
+from engine.errors import QuantityError
+
+_INCH = Fraction(254, 10_000)  # [m], exact by definition (NIST SP 811, appendix B)
+_FOOT = 12 * _INCH
+_POUND_FORCE = Fraction("4.4482216152605")  # [N], exact by definition (NIST SP 811, B.8)
+_KIP = 1000 * _POUND_FORCE
+_PSI = _POUND_FORCE / _INCH**2
+
+# Kind of quantity -> spelling -> size in SI base units.
+_UNITS: dict[str, dict[str, Fraction]] = {
+    "length": {
+        "in": _INCH,
+        "ft": _FOOT,
+        "mm": Fraction(1, 1000),
+        "cm": Fraction(1, 100),
+        "m": Fraction(1),
+    },
+    "force": {
+        "lbf": _POUND_FORCE,
+        "kip": _KIP,
+        "N": Fraction(1),
+        "kN": Fraction(1000),
+        "MN": Fraction(1_000_000),
+    },
+    "moment": {
+        "kip*ft": _KIP * _FOOT,
+        "kip*in": _KIP * _INCH,
+        "lbf*ft": _POUND_FORCE * _FOOT,
+        "lbf*in": _POUND_FORCE * _INCH,
+        "kN*m": Fraction(1000),
+        "MN*m": Fraction(1_000_000),
+        "N*m": Fraction(1),
+        "N*mm": Fraction(1, 1000),
+    },
+    "stress": {
+        "psi": _PSI,
+        "ksi": 1000 * _PSI,
+        "Pa": Fraction(1),
+        "kPa": Fraction(1000),
+        "MPa": Fraction(1_000_000),
+        "GPa": Fraction(1_000_000_000),
+        "N/mm^2": Fraction(1_000_000),
+    },
+}
+
+# Other spellings met on drawings and in calculations; keys are compared without case.
+_ALIASES = {
+    '"': "in",
+    "inch": "in",
+    "inches": "in",
+    "'": "ft",
+    "foot": "ft",
+    "feet": "ft",
+    "lb": "lbf",
+    "kips": "kip",
+    "k": "kip",
+    "k*ft": "kip*ft",
+    "k*in": "kip*in",
+    "ft*k": "kip*ft",
+    "ft*kip": "kip*ft",
+    "in*kip": "kip*in",
+    "kips*ft": "kip*ft",
+    "ft*kips": "kip*ft",
+    "kips*in": "kip*in",
+    "in*kips": "kip*in",
+    "lb*ft": "lbf*ft",
+    "ft*lb": "lbf*ft",
+    "ft*lbf": "lbf*ft",
+    "lb*in": "lbf*in",
+    "in*lb": "lbf*in",
+    "in*lbf": "lbf*in",
+    "n/mm2": "N/mm^2",
+}
+_BY_LOWER = {name.lower(): name for kind in _UNITS.values() for name in kind}
+# "MN" and "mN", "MPa" and "mPa" differ by case alone; only the spelling of the table is taken.
+_CASE_MATTERS = {"MN", "MN*m", "MPa"}
+
+_LONGEST = 60  # no honest quantity is longer; keeps hostile input cheap
+_UNSIGNED = r"(?:\d{1,15}(?:\.\d{0,15})?|\.\d{1,15})(?:[eE][+-]?\d{1,2})?"
+_NUMBER = rf"(?:\d{{1,6}}[ -]\d{{1,4}}/\d{{1,4}}|\d{{1,6}}/\d{{1,4}}|{_UNSIGNED})"
+_SIMPLE = re.compile(rf"^([+-]?)\s*({_NUMBER})\s*([^\d\s].*)$")
+_BARE = re.compile(rf"^([+-]?)\s*({_NUMBER})$")
+_FEET_INCHES = re.compile(
+    rf"^([+-]?)\s*({_UNSIGNED})\s*(?:ft|feet|foot|')\s*-?\s*({_NUMBER})\s*(?:in|inch|inches|\")$",
+    re.IGNORECASE,
+)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class UnitSystem:
+    """One consistent system: what is computed in, and what people read.
+
+    Attributes
+    ----------
+    name : str
+        ``us`` or ``si``.
+    inner : dict
+        Kind of quantity -> unit of the floats inside.
+    trade : dict
+        Kind of quantity -> unit of files and reports.
+    """
+
+    name: str
+    inner: dict[str, str]
+    trade: dict[str, str]
+
+    def to_trade(self, kind: str, value: float) -> float:
+        """Convert an inner value to the trade's unit of its kind.
+
+        Parameters
+        ----------
+        kind : str
+            Kind of quantity; kinds without two units (area, strain, ...) pass unchanged.
+        value : float
+            Value in the inner unit.
+
+        Returns
+        -------
+        float
+            Value in the trade's unit.
+        """
+        if kind not in self.inner or self.inner[kind] == self.trade[kind]:
+            return value
+        units = _UNITS[kind]
+        ratio = units[self.inner[kind]] / units[self.trade[kind]]
+        # Dividing by the whole number keeps round figures round (4920000 lbf*in -> 410 kip*ft).
+        return value / float(1 / ratio) if ratio < 1 else value * float(ratio)
+
+
+US = UnitSystem(
+    name="us",
+    inner={"length": "in", "force": "lbf", "moment": "lbf*in", "stress": "psi"},
+    trade={
+        "length": "in",
+        "force": "kip",
+        "moment": "kip*ft",
+        "stress": "psi",
+        "area": "in^2",
+        "mass_per_length": "lb/ft",
+    },
+)
+SI = UnitSystem(
+    name="si",
+    inner={"length": "mm", "force": "N", "moment": "N*mm", "stress": "MPa"},
+    trade={
+        "length": "mm",
+        "force": "kN",
+        "moment": "kN*m",
+        "stress": "MPa",
+        "area": "mm^2",
+        "mass_per_length": "kg/m",
+    },
+)
+SYSTEMS = {"us": US, "si": SI}
+
+
+def plain(value: float) -> str:
+    """Write a number with four significant digits and no exponent.
+
+    Parameters
+    ----------
+    value : float
+        Any number.
+
+    Returns
+    -------
+    str
+        For example ``40000``, ``21.44``, ``0.005``.
+    """
+    if value == 0.0 or not math.isfinite(value):
+        return f"{value:g}"
+    decimals = max(0, 3 - math.floor(math.log10(abs(value))))
+    text = f"{value:.{decimals}f}"
+    return text.rstrip("0").rstrip(".") if "." in text else text
+
+
+def _normal_unit(text: str) -> str:
+    """Bring a unit's spelling to the table's: ``kip-ft``, ``kip ft`` and ``k.ft`` are one."""
+    joined = re.sub(r"\s*[-*·⋅.\s]\s*", "*", text.strip())
+    if joined in _CASE_MATTERS:
+        return joined
+    lower = joined.lower()
+    if lower in _ALIASES:
+        return _ALIASES[lower]
+    known = _BY_LOWER.get(lower, joined)
+    return joined if known in _CASE_MATTERS else known
+
+
+def _number(text: str) -> Fraction:
+    """Read ``3/4``, ``1 1/2``, ``1-1/2``, ``24`` or ``2.5e1`` exactly."""
+    if "/" in text:
+        whole, _, fraction = text.replace("-", " ").rpartition(" ")
+        top, bottom = fraction.split("/")
+        if int(bottom) == 0:
+            msg = f"the fraction {text!r} divides by zero"
+            raise QuantityError(msg)
+        return Fraction(int(whole or 0)) + Fraction(int(top), int(bottom))
+    return Fraction(text)
+
+
+def _example(kind: str, system: UnitSystem) -> str:
+    examples = {
+        ("length", "us"): '"24 in", "3/4 in" or "26 ft 6 in"',
+        ("length", "si"): '"600 mm" or "0.6 m"',
+        ("moment", "us"): '"410 kip*ft"',
+        ("moment", "si"): '"550 kN*m"',
+        ("stress", "us"): '"4000 psi" or "60 ksi"',
+        ("stress", "si"): '"28 MPa"',
+    }
+    return examples.get((kind, system.name), "a number with its unit")
+
+
+def _show(text: object) -> str:
+    shown = repr(text)
+    return shown if len(shown) <= _LONGEST else shown[:_LONGEST] + "..."
+
+
+def parse_quantity(value: object, kind: str, system: UnitSystem, plain_unit: str) -> float:
+    """Read one quantity of a job file.
+
+    Parameters
+    ----------
+    value : object
+        Text with a unit, or a plain number in `plain_unit`.
+    kind : str
+        ``length``, ``moment`` or ``stress``.
+    system : UnitSystem
+        System of the result.
+    plain_unit : str
+        Unit that a plain number is taken in.
+
+    Returns
+    -------
+    float
+        Value in the system's inner unit of that kind.
+
+    Raises
+    ------
+    QuantityError
+        If the text is no quantity, its unit is unknown or of another kind, or the number
+        is not finite.
+    """
+    target = _UNITS[kind][system.inner[kind]]
+    expected = f"expected a {kind} such as {_example(kind, system)}"
+    if isinstance(value, bool) or not isinstance(value, int | float | str):
+        msg = f"got {_show(value)}; {expected}"
+        raise QuantityError(msg)
+    if not isinstance(value, str):
+        if isinstance(value, float) and not math.isfinite(value):
+            msg = f"got {value}; {expected}, a finite number"
+            raise QuantityError(msg)
+        if abs(value) > 1e18:
+            msg = f"got a number beyond 1e18; {expected}"
+            raise QuantityError(msg)
+        return float(Fraction(value) * _UNITS[kind][plain_unit] / target)
+
+    text = value.strip().replace("’", "'").replace("″", '"').replace("′", "'")
+    if not text or len(text) > _LONGEST:
+        msg = f"got {_show(value)}; {expected}"
+        raise QuantityError(msg)
+    if kind == "length" and (match := _FEET_INCHES.match(text)):
+        sign, feet, inches = match.groups()
+        metres = _number(feet) * _FOOT + _number(inches) * _INCH
+        return float((-metres if sign == "-" else metres) / target)
+    if _BARE.match(text):
+        msg = f"got {_show(value)} without a unit; {expected}"
+        raise QuantityError(msg)
+    match = _SIMPLE.match(text)
+    if match is None:
+        msg = f"got {_show(value)}; {expected}"
+        raise QuantityError(msg)
+    sign, digits, unit_text = match.groups()
+    unit = _normal_unit(unit_text)
+    if unit not in _UNITS[kind]:
+        raise QuantityError(_wrong_unit(value, unit, kind, expected))
+    size = _number(digits) * _UNITS[kind][unit] / target
+    return float(-size if sign == "-" else size)
+
+
+def _wrong_unit(value: str, unit: str, kind: str, expected: str) -> str:
+    for other, table in _UNITS.items():
+        if unit in table:
+            return f"got {_show(value)}, a {other}; {expected}"
+    allowed = ", ".join(_UNITS[kind])
+    message = f"got {_show(value)} with the unknown unit {_show(unit)}; {expected} ({allowed})"
+    near = difflib.get_close_matches(unit, _UNITS[kind], n=1)
+    return f"{message}; hint: did you mean {near[0]}?" if near else message

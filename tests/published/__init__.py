@@ -1,0 +1,1 @@
+"""Tests against published figures, one module a source."""
