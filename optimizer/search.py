@@ -1,0 +1,318 @@
+"""The search of one section, and its proof.
+
+Families of layouts are taken one after another, most promising first. For each the solver
+lists every layout that meets the necessary conditions and could still enter the short list,
+be the lightest or have the fewest bars; the engine decides exactly about each. What could
+still enter is known from what has been found: a layout worse than the last line of a full
+list, or than the last permitted one of its own pattern, never does. So when all families
+are done, nothing left out is better than the last line shown.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from engine import Batch, Layout, Section, assess, place
+from engine.assessment import ROUNDING, service_stress
+from engine.crack_control import largest_spacing
+from engine.layouts import Layer
+from optimizer.candidates import Candidate, short_list
+from optimizer.conditions import SLACK, envelope
+from optimizer.families import Family, families
+from optimizer.model import Wanted, enumerate_family
+from optimizer.problem import Problem, Ranking
+from optimizer.scoring import score, steel_per_bar
+from optimizer.totals import Totals, possible_totals
+
+_VALUE_SLACK = 2e-6  # values equal to six decimals are ties and have to be compared in full
+_FIRST_BAND, _BAND_GROWTH = 1.06, 1.25
+_SEED_TRIES = 8
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Found:
+    """Outcome of a search.
+
+    Attributes
+    ----------
+    chosen : tuple of Candidate
+        The short list, best first; empty if no layout passes.
+    lightest, fewest : Candidate or None
+        Best of all by mass and by number of bars.
+    proved : bool
+        Whether nothing left out is better; False if the work limit stopped the search.
+    """
+
+    chosen: tuple[Candidate, ...]
+    lightest: Candidate | None
+    fewest: Candidate | None
+    proved: bool
+
+
+class _Pool:
+    """Candidates found so far, and what a further one has to beat."""
+
+    def __init__(self, ranking: Ranking) -> None:
+        self.ranking = ranking
+        self.candidates: dict[Layout, Candidate] = {}
+        self._chosen: list[Candidate] | None = []
+
+    def add(self, candidate: Candidate) -> None:
+        self.candidates[candidate.layout] = candidate
+        self._chosen = None
+
+    @property
+    def chosen(self) -> list[Candidate]:
+        """The short list of what has been found."""
+        if self._chosen is None:
+            self._chosen = short_list(self.candidates.values(), self.ranking)
+        return self._chosen
+
+    def limit(self, pattern: tuple[int, int]) -> float:
+        """Greatest value with which a layout of a pattern could still enter the list."""
+        limit = math.inf
+        chosen, by = self.chosen, self.ranking.by
+        if len(chosen) == self.ranking.keep:
+            limit = chosen[-1].value(by)
+        if self.ranking.per_pattern is not None:
+            same = [item for item in chosen if item.pattern == pattern]
+            if len(same) >= self.ranking.per_pattern:
+                limit = min(limit, same[-1].value(by))
+        return limit + _VALUE_SLACK
+
+    @property
+    def least_mass(self) -> float:
+        """Mass of the lightest so far."""
+        return min((i.mass for i in self.candidates.values()), default=math.inf) + _VALUE_SLACK
+
+    @property
+    def fewest_bars(self) -> float:
+        """Number of bars of the layout with the fewest so far."""
+        return min((item.bars for item in self.candidates.values()), default=math.inf)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Prospect:
+    """A family with what arithmetic says about it, and linear lower bounds of its values."""
+
+    family: Family
+    totals: Totals
+    main: Wanted
+    mass: Wanted
+    bars: Wanted
+
+    @property
+    def least(self) -> float:
+        """Lower bound of the value the ranking orders by."""
+        return self.least_of(self.main)
+
+    def least_of(self, want: Wanted) -> float:
+        """Lower bound of a value over the family."""
+        return self.totals.least(want.cost) + want.constant
+
+
+def _prospect(family: Family, ranking: Ranking) -> _Prospect:
+    mass = Wanted(tuple(bar.mass for bar in family.bars), 0.0, math.inf)
+    if ranking.by == "lightest":
+        main = mass
+    else:
+        # The term `tight` is never negative: leaving it out bounds the score from below.
+        cost = tuple(steel_per_bar(bar, ranking) + ranking.per_bar for bar in family.bars)
+        constant = ranking.per_extra_layer * (family.layers - 1)
+        constant += ranking.per_extra_size * (len(family.bars) - 1)
+        main = Wanted(cost, constant, math.inf)
+    return _Prospect(
+        family=family,
+        totals=possible_totals(family),
+        main=main,
+        mass=mass,
+        bars=Wanted(tuple(1.0 for _ in family.bars), 0.0, math.inf),
+    )
+
+
+def layout_of(family: Family, counts: NDArray[np.int64]) -> Layout:
+    """Turn counts into a layout.
+
+    Parameters
+    ----------
+    family : Family
+        Family of the layout.
+    counts : ndarray of int, shape (layers, sizes)
+        Bars of each size in each layer.
+
+    Returns
+    -------
+    Layout
+        The layout.
+    """
+    return Layout(
+        tuple(
+            Layer(
+                tuple(
+                    (bar, int(count)) for bar, count in zip(family.bars, row, strict=True) if count
+                )
+            )
+            for row in counts
+        )
+    )
+
+
+class Search:
+    """Search of one section; see the module's text for its logic.
+
+    Parameters
+    ----------
+    problem : Problem
+        Section, bars allowed and ranking.
+    confirm : bool
+        Whether the answer that nothing passes is confirmed by a second solve.
+    """
+
+    def __init__(self, problem: Problem, *, confirm: bool = True) -> None:
+        self.problem = problem
+        self.confirm = confirm
+        self.pool = _Pool(problem.ranking)
+        self.work_left = problem.ranking.work_limit
+        self.complete = True
+
+    def run(self) -> Found:
+        """Search all families.
+
+        Returns
+        -------
+        Found
+            The short list and whether it is proved.
+        """
+        section, ranking = self.problem.section, self.problem.ranking
+        if not _opposite_fits(section):
+            return Found(chosen=(), lightest=None, fewest=None, proved=True)
+        members = families(envelope(section), self.problem.rules)
+        prospects = [_prospect(family, ranking) for family in members]
+        prospects = [item for item in prospects if math.isfinite(item.least)]
+        prospects.sort(key=lambda item: item.least)  # stable: ties keep the families' order
+        for prospect in prospects:
+            if len(prospect.family.bars) == 1:
+                self._seed(prospect)
+        for prospect in prospects:
+            self._explore(prospect)
+        if not self.pool.candidates and self.confirm:
+            # Nobody is told "none" on one answer of the solver: it is asked again with
+            # presolve, another way to the same answer.
+            for prospect in prospects:
+                listed = enumerate_family(prospect.family, (), self.work_left, presolve=True)
+                self.complete &= listed.complete
+                self._judge(prospect, listed.counts)
+        candidates = self.pool.candidates.values()
+        return Found(
+            chosen=tuple(self.pool.chosen),
+            lightest=min(candidates, key=lambda item: item.lightest_key, default=None),
+            fewest=min(candidates, key=lambda item: item.fewest_key, default=None),
+            proved=self.complete,
+        )
+
+    def _seed(self, prospect: _Prospect) -> None:
+        """Find good layouts of one size without the solver, so that limits are low early."""
+        counts = one_size_counts(prospect.family)[:, :, None]
+        for conditions in prospect.family.conditions.values():
+            left = np.tensordot(counts, conditions.coefficients, axes=([1, 2], [1, 2]))
+            bounds = conditions.bounds - np.abs(conditions.bounds) * SLACK
+            counts = counts[(left >= bounds).all(axis=1)]
+        order = np.argsort(counts.sum(axis=(1, 2)), kind="stable")[:_SEED_TRIES]
+        self._judge(prospect, counts[order])
+
+    def _explore(self, prospect: _Prospect) -> None:
+        """List what may still be of interest, in bands of growing value while nothing of the
+        pattern is known that would limit it.
+        """
+        family = prospect.family
+        band = prospect.least * _FIRST_BAND
+        most = 2 * prospect.main.constant + sum(
+            max(cost * count for cost, count in zip(prospect.main.cost, row, strict=True)) * 2
+            for row in family.most
+        )
+        while True:
+            limit = self.pool.limit(family.pattern)
+            target = limit if band >= min(limit, most) else band
+            bounded = (
+                (prospect.main, target),
+                (prospect.mass, self.pool.least_mass),
+                (prospect.bars, self.pool.fewest_bars),
+            )
+            wanted = [
+                replace(want, limit=bound)
+                for want, bound in bounded
+                if prospect.least_of(want) <= bound
+            ]
+            if wanted:
+                listed = enumerate_family(family, wanted, self.work_left)
+                self.work_left -= listed.work
+                self.complete &= listed.complete
+                self._judge(prospect, listed.counts)
+            if target == limit or not self.complete:
+                return
+            band *= _BAND_GROWTH
+
+    def _judge(self, prospect: _Prospect, counts: NDArray[np.int64]) -> None:
+        """Let the engine decide about layouts, the cheapest first, as far as they matter."""
+        if not len(counts):
+            return
+        section, ranking = self.problem.section, self.problem.ranking
+        family, pool = prospect.family, self.pool
+        counts = counts[assess(section, Batch(bars=family.bars, counts=counts)).passes]
+        if not len(counts):
+            return
+        batch = Batch(bars=family.bars, counts=counts)
+        s = largest_spacing(section.edition, service_stress(section, batch), section.bar_face)
+        main = batch.quantity(prospect.main.cost) + prospect.main.constant
+        mass = batch.quantity(prospect.mass.cost)
+        bars = batch.quantity(prospect.bars.cost)
+        for row in np.argsort(main, kind="stable"):
+            if (
+                main[row] > pool.limit(family.pattern)
+                and mass[row] > pool.least_mass
+                and bars[row] > pool.fewest_bars
+            ):
+                continue
+            layout = layout_of(family, counts[row])
+            if layout in pool.candidates:
+                continue
+            placement = place(section, layout)
+            if placement.gaps_fit and placement.layers[0].spacing <= s[row] * (1 + ROUNDING):
+                pool.add(Candidate.of(layout, placement, score(layout, placement, ranking)))
+
+
+def _opposite_fits(section: Section) -> bool:
+    """Bars given at the other face have to fit, whatever is chosen here."""
+    if section.opposite is None:
+        return True
+    return place(section.opposite_face(), section.opposite).gaps_fit
+
+
+def one_size_counts(family: Family) -> NDArray[np.int64]:
+    """Counts of layouts of one size that fill the lower layers well; a start for the search.
+
+    Parameters
+    ----------
+    family : Family
+        Family of one size.
+
+    Returns
+    -------
+    ndarray of int, shape (n, layers)
+        Bars in each layer.
+    """
+    rows: list[tuple[int, ...]] = [
+        (first,) for first in range(family.least_first, family.most[0][0] + 1)
+    ]
+    for _ in range(1, family.layers):
+        rows = [
+            (*row, count)
+            for row in rows
+            for count in range(2, row[-1] + 1)
+            if count % 2 == 0 or row[-1] % 2 == 1
+        ]
+    return np.array(rows, dtype=np.int64).reshape(len(rows), family.layers)

@@ -1,0 +1,1 @@
+"""Complete enumeration of small sections, the yardstick that the search is held against."""
