@@ -1,7 +1,8 @@
 """Section mechanics and code checks of reinforced concrete beams; needs no solver."""
 
 from engine.assessment import Assessment, Batch, assess, required_share
-from engine.checks import Check, CheckedLayout, State, check_layout, check_layouts
+from engine.check_row import Check, State
+from engine.checks import CheckedLayout, check_layout, check_layouts
 from engine.cover import Exposure
 from engine.cracked_section import CrackedSection, cracked_section
 from engine.editions import EDITIONS, Edition, edition

@@ -26,9 +26,10 @@ from engine.strength_reduction import least_strain, phi
 
 ROUNDING = 1e-9
 """Relative slack of comparisons, for floating point only. [-]"""
-_ROOT_PRECISION = 1e-9  # relative error of the moment at the required area
+_ROOT_PRECISION = 1e-10  # relative error of the moment at the required area
 _STEPS = 60
-_STEPS_UP = np.geomspace(1.05, 8.0, 24)
+_LARGEST_SHARE = 16.0  # of a layout's own area that more of the same bars is looked for
+_HALVINGS = 45
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -314,40 +315,43 @@ def required_share(section: Section, batch: Batch) -> FloatArray:
     Returns
     -------
     ndarray, shape (n,)
-        Required over provided area; infinite where more of the same bars ends below the least
-        permitted strain before it reaches Mu. [-]
+        Required over provided area; infinite where no amount of the same bars reaches Mu within
+        the permitted strains. [-]
     """
     stacked = _stacked(section, batch)
     rows = np.arange(len(stacked.d))
     limit = least_strain(section.steel, tension_controlled=section.tension_controlled)
 
     def excess(share: FloatArray) -> tuple[FloatArray, FloatArray]:
-        """Strength beyond Mu, and eps_t."""
+        """Strength beyond Mu, and eps_t beyond its limit."""
         groups = _scaled(stacked, share, rows)
         _, strain, _, strength = _design_strength(section, groups, stacked.dt)
-        return strength - section.demand, strain
+        return strength - section.demand, strain - limit
 
-    low, high = np.zeros(len(rows)), np.ones(len(rows))
-    below = np.full(len(rows), -section.demand)
-    above, strain = excess(high)
-    # Where the layout is too weak more of it is tried, as long as it stays ductile enough.
-    for step in _STEPS_UP:
-        rising = (above < 0.0) & (strain >= limit)
-        if not rising.any():
-            break
-        low, below = np.where(rising, high, low), np.where(rising, above, below)
-        high = np.where(rising, step, high)
-        value, strain_there = excess(high)
-        above = np.where(rising, value, above)
-        strain = np.where(rising, strain_there, strain)
+    # phi Mn rises with the area up to the end of the permitted strains: the root lies below
+    # the layout itself where that is strong and ductile, else below the share at that end.
+    high = np.ones(len(rows))
+    above, spare = excess(high)
+    unsure = (above < 0.0) | (spare < 0.0)
+    if unsure.any():
+        ductile, brittle = np.zeros(len(rows)), np.full(len(rows), _LARGEST_SHARE)
+        for _ in range(_HALVINGS):
+            middle = np.where(unsure, (ductile + brittle) / 2, 1.0)
+            good = excess(middle)[1] >= 0.0
+            ductile, brittle = np.where(good, middle, ductile), np.where(good, brittle, middle)
+        high = np.where(unsure, ductile, 1.0)
+        above = np.where(unsure, excess(high)[0], above)
     found = above >= 0.0
-    share = high
-    # False position with the Illinois rule: the retained end's value is halved.
+    low, below = np.zeros(len(rows)), np.full(len(rows), -section.demand)
+    share, active = high.copy(), found.copy()
+    # False position with the Illinois rule: the retained end's value is halved. A row that is
+    # done stays as it is, whatever the others still need.
     for _ in range(_STEPS):
-        with np.errstate(invalid="ignore"):
-            share = np.where(found, high - above * (high - low) / (above - below), 1.0)
+        with np.errstate(divide="ignore", invalid="ignore"):
+            share = np.where(active, high - above * (high - low) / (above - below), share)
         value, _ = excess(share)
-        if (~found | (np.abs(value) <= _ROOT_PRECISION * section.demand)).all():
+        active &= np.abs(value) > _ROOT_PRECISION * section.demand
+        if not active.any():
             break
         up = value >= 0.0
         low, high = np.where(up, low, share), np.where(up, share, high)

@@ -31,8 +31,9 @@ class Edition:
         Coefficient of the square root in Ec of normalweight concrete, 19.2.2.1. [-]
     strength_range : tuple of float
         Specified concrete strengths taken: least of Table 19.2.1.1, largest of this tool.
-    beta1_start, beta1_step : float
-        beta1 falls by 0.05 for each step above the start, Table 22.2.2.4.3. [psi or MPa]
+    beta1_start, beta1_step, beta1_end : float
+        beta1 falls by 0.05 for each step above the start and is 0.65 from the end on,
+        Table 22.2.2.4.3. [psi or MPa]
     yield_range : tuple of float
         Yield strengths taken in flexure; the upper one from Table 20.2.2.4(a).
     eps_ty_permitted_for : float
@@ -73,6 +74,7 @@ class Edition:
     strength_range: tuple[float, float]
     beta1_start: float
     beta1_step: float
+    beta1_end: float
     yield_range: tuple[float, float]
     eps_ty_permitted_for: float
     minimum_steel_root: float
@@ -111,6 +113,7 @@ def _us(name: str, year: int, cap: float, fy_cap: float, cover_clause: str) -> E
         strength_range=(2500.0, 15_000.0),
         beta1_start=4000.0,
         beta1_step=1000.0,
+        beta1_end=8000.0,
         yield_range=(33_000.0, cap),
         eps_ty_permitted_for=60_000.0,
         minimum_steel_root=3.0,
@@ -145,6 +148,7 @@ def _si(name: str, year: int, cap: float, fy_cap: float, cover_clause: str) -> E
         strength_range=(17.0, 105.0),
         beta1_start=28.0,
         beta1_step=7.0,
+        beta1_end=55.0,
         yield_range=(230.0, cap),
         eps_ty_permitted_for=420.0,
         minimum_steel_root=0.25,

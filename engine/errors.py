@@ -32,7 +32,8 @@ class OutOfRangeError(EngineError):
     """
 
     def __init__(self, message: str, *, what: str = "") -> None:
-        super().__init__(message)
+        super().__init__(f"{what}: {message}" if what else message)
+        self.message = message
         self.what = what
 
 

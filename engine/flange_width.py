@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 from engine.errors import OutOfRangeError
@@ -19,12 +20,24 @@ class Slab:
         Clear distance to the next web on each side; zero where there is no slab. [in or mm]
     span : float
         Clear span of the beam. [in or mm]
+
+    Raises
+    ------
+    OutOfRangeError
+        If thickness or span is not a length.
     """
 
     thickness: float
     clear_left: float
     clear_right: float
     span: float
+
+    def __post_init__(self) -> None:
+        for name in ("thickness", "span"):
+            value = getattr(self, name)
+            if not (math.isfinite(value) and value > 0.0):
+                msg = f"{name} {value:g}; allowed: a finite length above 0"
+                raise OutOfRangeError(msg, what="slab")
 
 
 def overhang(slab: Slab, clear: float, *, both_sides: bool) -> float:

@@ -9,7 +9,8 @@ from dataclasses import dataclass
 from catalogs import Bar, BarCatalog
 from engine.errors import LayoutError
 
-_GROUP = re.compile(r"^\s*(\d{1,3})\s*(\S{1,20})\s*$")
+# A size that starts with a digit needs a blank before it: "4 16" is four bars, "416" is none.
+_GROUP = re.compile(r"^\s*(\d{1,3})(?:\s+(\S{1,20})|([^\d\s]\S{0,19}))\s*$")
 MOST_LAYERS = 9
 MOST_BARS = 99
 
@@ -121,16 +122,17 @@ def parse_layout(texts: Sequence[str], catalog: BarCatalog) -> Layout:
         msg = f"{len(texts)} layers; allowed: 1 to {MOST_LAYERS}"
         raise LayoutError(msg)
     layers = []
-    for text in texts:
+    for given in texts:
         groups = []
-        for part in str(text).split("+"):
+        text = str(given)
+        for part in text.split("+"):
             match = _GROUP.match(part)
             if match is None or int(match[1]) == 0:
                 shown = repr(text) if len(text) <= 60 else repr(text[:60]) + "..."
                 example = catalog.bars[min(3, len(catalog.bars) - 1)].designation
                 msg = f'got {shown}; expected counts and sizes such as "4 {example}"'
                 raise LayoutError(msg)
-            groups.append((catalog.bar(match[2]), int(match[1])))
+            groups.append((catalog.bar(match[2] or match[3]), int(match[1])))
         layer = layer_of(groups)
         if layer.count > MOST_BARS:
             msg = f"{layer.count} bars in a layer; allowed: 1 to {MOST_BARS}"

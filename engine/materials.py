@@ -69,8 +69,10 @@ class Concrete:
     @property
     def beta1(self) -> float:
         """Depth of the block over the neutral axis, Table 22.2.2.4.3. [-]"""
+        if self.fc >= self.edition.beta1_end:
+            return 0.65
         drop = 0.05 * (self.fc - self.edition.beta1_start) / self.edition.beta1_step
-        return min(0.85, max(0.65, 0.85 - drop))
+        return min(0.85, 0.85 - drop)
 
     @property
     def block_stress(self) -> float:

@@ -8,6 +8,7 @@ compression face.
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 import numpy as np
@@ -16,6 +17,12 @@ from numpy.typing import NDArray
 from engine.errors import OutOfRangeError
 
 FloatArray = NDArray[np.float64]
+
+
+def _positive(value: float, name: str, what: str) -> None:
+    if not (math.isfinite(value) and value > 0.0):
+        msg = f"{name} {value:g}; allowed: a finite length above 0"
+        raise OutOfRangeError(msg, what=what)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -167,18 +174,24 @@ class Outline:
     bottom: Flange | None = None
 
     def __post_init__(self) -> None:
-        for where, flange in (("flange", self.top), ("bottom_flange", self.bottom)):
-            if flange is not None and flange.width < self.web:
+        for name in ("web", "depth"):
+            _positive(getattr(self, name), name, name)
+        parts = (("flange", self.top), ("bottom_flange", self.bottom))
+        flanges = [(where, flange) for where, flange in parts if flange is not None]
+        for where, flange in flanges:
+            _positive(flange.width, "width", where)
+            _positive(flange.thickness, "thickness", where)
+            beyond = flange.width - self.web
+            if beyond < 0.0:
                 msg = f"width {flange.width:g}; allowed: at least the web's {self.web:g}"
                 raise OutOfRangeError(msg, what=where)
-            beyond = 0.0 if flange is None else flange.width - self.web
-            if flange is not None and not 0.0 <= (flange.left or 0.0) <= beyond * (1 + 1e-9):
+            if not 0.0 <= (flange.left or 0.0) <= beyond * (1 + 1e-9):
                 msg = f"left overhang {flange.left:g}; allowed: 0 to {beyond:g}"
                 raise OutOfRangeError(msg, what=where)
-        taken = sum(flange.thickness for flange in (self.top, self.bottom) if flange is not None)
+        taken = sum(flange.thickness for _, flange in flanges)
         if taken >= self.depth:
             msg = f"thickness {taken:g} leaves no web in a depth of {self.depth:g}"
-            raise OutOfRangeError(msg, what="flange" if self.top is not None else "bottom_flange")
+            raise OutOfRangeError(msg, what=flanges[0][0])
 
     def profile(self, *, sagging: bool) -> Profile:
         """Strips from the compression face.

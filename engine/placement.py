@@ -17,6 +17,8 @@ from engine.sections import Section
 
 _TIE = 1e-9  # gaps closer than this are the same gap [in or mm]
 
+_SYMMETRY = 1e-6  # lines further off their mirror image are not symmetric [in or mm]
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class PlacedLayer:
@@ -32,10 +34,11 @@ class PlacedLayer:
         Sizes, left to right.
     bottom : float
         Distance of the bars' surface from the tension face. [in or mm]
-    gap : float
+    smallest_gap : float
         Smallest clear gap; infinite for a single bar. [in or mm]
-    gap_required : float
-        Required clear gap of the tightest pair, 25.2.1 or the job's. [in or mm]
+    gap, gap_required : float
+        Clear gap of the tightest pair and what it has to be, 25.2.1 or the job's. Between
+        large bars a gap may be tighter than a smaller one between small bars. [in or mm]
     spacing : float
         Largest centre-to-centre spacing of neighbours; zero for a single bar. [in or mm]
     aligned : bool
@@ -46,6 +49,7 @@ class PlacedLayer:
     diameters: tuple[float, ...]
     designations: tuple[str, ...]
     bottom: float
+    smallest_gap: float
     gap: float
     gap_required: float
     spacing: float
@@ -61,7 +65,7 @@ class Placement:
     @property
     def smallest_gap(self) -> float:
         """Smallest clear gap of the layout. [in or mm]"""
-        return min(layer.gap for layer in self.layers)
+        return min(layer.smallest_gap for layer in self.layers)
 
     @property
     def height(self) -> float:
@@ -160,14 +164,17 @@ def _measure(
     gaps = clear_gaps(x, diameters)
     required = [section.required_gap(max(pair)) for pair in pairwise(diameters)]
     # The tightest pair is the one with the least to spare, not the one with the least gap.
-    tightest = min(range(len(gaps)), key=lambda i: gaps[i] / required[i], default=None)
+    pairs = list(zip(gaps, required, strict=True))
+    single = (float("inf"), section.required_gap(diameters[0]))
+    gap, gap_required = min(pairs, key=lambda pair: pair[0] / pair[1], default=single)
     return PlacedLayer(
         x=x,
         diameters=diameters,
         designations=tuple(name for name, _ in order),
         bottom=bottom,
-        gap=min(gaps, default=float("inf")),
-        gap_required=section.required_gap(diameters[0]) if tightest is None else required[tightest],
+        smallest_gap=min(gaps, default=float("inf")),
+        gap=gap,
+        gap_required=gap_required,
         spacing=max((right - left for left, right in pairwise(x)), default=0.0),
         aligned=aligned,
     )
@@ -233,11 +240,14 @@ def stack(lines: tuple[float, ...], diameters: tuple[float, ...]) -> tuple[float
     Returns
     -------
     tuple of float or None
-        Bar centres, or None where no symmetric choice exists: more bars than lines, or an odd
-        count over an even one. Of choices with the same smallest gap the outermost lines win.
+        Bar centres, or None where no symmetric choice exists: more bars than lines, an odd
+        count over an even one, or lines that are not symmetric themselves. Of choices with the
+        same smallest gap the outermost lines win.
     """
     count = len(diameters)
     if count > len(lines) or (count % 2 and len(lines) % 2 == 0):
+        return None
+    if any(abs(left + right) > _SYMMETRY for left, right in zip(lines, lines[::-1], strict=True)):
         return None
     pairs, centred = count // 2, count % 2 == 1
     if pairs == 0:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass, replace
 
 from catalogs import Bar
@@ -82,12 +83,13 @@ class Section:
 
     def __post_init__(self) -> None:
         unit = self.length_unit
+        self._check_numbers()
         least_strain(self.steel, tension_controlled=self.tension_controlled)
         if self.Mu == 0.0:
-            msg = "Mu of 0; allowed: any other moment, + sagging, - hogging"
+            msg = "got 0; allowed: any other moment, + sagging, - hogging"
             raise OutOfRangeError(msg, what="Mu")
         if self.Ms is not None and self.Ms * self.Mu <= 0.0:
-            msg = "Ms and Mu of different sign; allowed: both sagging (+) or both hogging (-)"
+            msg = "its sign differs from Mu's; allowed: both sagging (+) or both hogging (-)"
             raise OutOfRangeError(msg, what="Ms")
         if self.count_opposite and self.opposite is None:
             msg = "true without opposite bars; hint: give opposite"
@@ -101,6 +103,9 @@ class Section:
         if self.layer_gap < least - 1e-9:
             msg = f"got {self.layer_gap:g} {unit}; allowed: at least {least:g} {unit} (25.2.2)"
             raise OutOfRangeError(msg, what="layer_gap")
+        if self.inner_width > 0.0 and self.stack_height <= 0.0 and self.opposite is not None:
+            msg = f"{self.opposite.label} leaves no height for bars at the other face"
+            raise OutOfRangeError(msg, what="opposite")
         if self.inner_width <= 0.0 or self.stack_height <= 0.0:
             msg = (
                 f"{self.cover:g} {unit} with stirrup {self.stirrup.designation} leaves no room for"
@@ -108,6 +113,24 @@ class Section:
                 " hint: check width, depth and cover"
             )
             raise OutOfRangeError(msg, what="cover")
+
+    def _check_numbers(self) -> None:
+        """Refuse what no later check could make sense of."""
+        for name in ("cover", "aggregate", "layer_gap", "min_gap", "Mu", "Ms", "clear_span"):
+            value = getattr(self, name)
+            signed = name in ("Mu", "Ms")
+            if value is not None and not (math.isfinite(value) and (signed or value >= 0.0)):
+                msg = f"got {value:g}; allowed: a finite value{'' if signed else ', not negative'}"
+                raise OutOfRangeError(msg, what=name)
+        if self.steel.edition != self.edition:
+            msg = f"steel to {self.steel.edition.name} in concrete to {self.edition.name}"
+            raise OutOfRangeError(msg, what="steel")
+        bars = [("stirrup", self.stirrup)]
+        bars += [("opposite", bar) for bar in (self.opposite.sizes if self.opposite else ())]
+        for what, bar in bars:
+            if bar.system != self.edition.units:
+                msg = f"{bar.designation} has {bar.system} units; allowed: {self.edition.units}"
+                raise OutOfRangeError(msg, what=what)
 
     @property
     def edition(self) -> Edition:

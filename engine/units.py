@@ -91,6 +91,10 @@ _BY_LOWER = {name.lower(): name for kind in _UNITS.values() for name in kind}
 # "MN" and "mN", "MPa" and "mPa" differ by case alone; only the spelling of the table is taken.
 _CASE_MATTERS = {"MN", "MN*m", "MPa"}
 
+# Typographic characters as word processors write them.
+_SPELLINGS = str.maketrans({"’": "'", "′": "'", "”": '"', "″": '"', "−": "-"})
+
+_LARGEST = 10**18  # inner units
 _LONGEST = 60  # no honest quantity is longer; keeps hostile input cheap
 _UNSIGNED = r"(?:\d{1,15}(?:\.\d{0,15})?|\.\d{1,15})(?:[eE][+-]?\d{1,2})?"
 _NUMBER = rf"(?:\d{{1,6}}[ -]\d{{1,4}}/\d{{1,4}}|\d{{1,6}}/\d{{1,4}}|{_UNSIGNED})"
@@ -227,7 +231,10 @@ def _example(kind: str, system: UnitSystem) -> str:
 
 
 def _show(text: object) -> str:
-    shown = repr(text)
+    try:
+        shown = repr(text)
+    except ValueError:  # a whole number with more digits than Python prints
+        shown = "a number of absurd length"
     return shown if len(shown) <= _LONGEST else shown[:_LONGEST] + "..."
 
 
@@ -265,19 +272,17 @@ def parse_quantity(value: object, kind: str, system: UnitSystem, plain_unit: str
         if isinstance(value, float) and not math.isfinite(value):
             msg = f"got {value}; {expected}, a finite number"
             raise QuantityError(msg)
-        if abs(value) > 1e18:
-            msg = f"got a number beyond 1e18; {expected}"
-            raise QuantityError(msg)
-        return float(Fraction(value) * _UNITS[kind][plain_unit] / target)
+        return _sized(Fraction(value) * _UNITS[kind][plain_unit] / target, value, expected)
 
-    text = value.strip().replace("’", "'").replace("″", '"').replace("′", "'")
+    text = value.strip().translate(_SPELLINGS).replace("mm²", "mm^2")
+    text = text[:-1] if text.endswith(("in.", "ft.")) else text
     if not text or len(text) > _LONGEST:
         msg = f"got {_show(value)}; {expected}"
         raise QuantityError(msg)
     if kind == "length" and (match := _FEET_INCHES.match(text)):
         sign, feet, inches = match.groups()
         metres = _number(feet) * _FOOT + _number(inches) * _INCH
-        return float((-metres if sign == "-" else metres) / target)
+        return _sized((-metres if sign == "-" else metres) / target, value, expected)
     if _BARE.match(text):
         msg = f"got {_show(value)} without a unit; {expected}"
         raise QuantityError(msg)
@@ -290,7 +295,14 @@ def parse_quantity(value: object, kind: str, system: UnitSystem, plain_unit: str
     if unit not in _UNITS[kind]:
         raise QuantityError(_wrong_unit(value, unit, kind, expected))
     size = _number(digits) * _UNITS[kind][unit] / target
-    return float(-size if sign == "-" else size)
+    return _sized(-size if sign == "-" else size, value, expected)
+
+
+def _sized(size: Fraction, value: object, expected: str) -> float:
+    if abs(size) > _LARGEST:
+        msg = f"got {_show(value)}, beyond any structure; {expected}"
+        raise QuantityError(msg)
+    return float(size)
 
 
 def _wrong_unit(value: str, unit: str, kind: str, expected: str) -> str:

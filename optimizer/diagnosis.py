@@ -26,6 +26,7 @@ from engine import (
 from engine.assessment import ROUNDING, service_stress
 from engine.cover import required_cover
 from engine.crack_control import largest_spacing
+from engine.detailing_checks import opposite_bars
 from engine.units import plain
 from optimizer.candidates import Candidate
 from optimizer.conditions import envelope
@@ -125,9 +126,8 @@ def diagnose(problem: Problem) -> Diagnosis:
 
 def _blocked_by(problem: Problem) -> tuple[Block, ...]:
     section, work = problem.section, problem.ranking.work_limit
-    opposite = section.opposite
-    if opposite is not None and not place(section.opposite_face(), opposite).gaps_fit:
-        return (Block(id="opposite_gap", families=1, of=1),)
+    if not opposite_bars(section).ok:
+        return (Block(id="opposite_bars", families=1, of=1),)
     found: Counter[str] = Counter()
     everything = all_families(envelope(section), problem.rules)
     for item in everything:

@@ -15,8 +15,8 @@ import numpy as np
 from catalogs import Bar
 from engine import Section
 from engine.assessment import ROUNDING
-from engine.checks import cover_fits
 from engine.crack_control import WITHOUT_ANALYSIS, largest_spacing
+from engine.detailing_checks import cover_fits
 from optimizer.conditions import (
     SLACK,
     Conditions,

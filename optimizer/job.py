@@ -25,6 +25,7 @@ from engine import (
     Exposure,
     Flange,
     Outline,
+    OutOfRangeError,
     Section,
     Slab,
     Steel,
@@ -303,8 +304,10 @@ class _Reader:
         try:
             yield
         except (EngineError, CatalogError) as error:
-            at_fault = getattr(error, "what", "") or key
-            msg = f"{self.where}, {_KEY_NAMES.get(at_fault, at_fault)}: {error}"
+            at_fault, text = key, str(error)
+            if isinstance(error, OutOfRangeError) and error.what:
+                at_fault, text = _KEY_NAMES.get(error.what, error.what), error.message
+            msg = f"{self.where}, {at_fault}: {text}"
             raise JobError(msg) from None
 
     def _own_or(self, group: object, key: str, default: _T) -> _T:

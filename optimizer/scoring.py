@@ -78,7 +78,7 @@ def score(layout: Layout, placement: Placement, ranking: Ranking) -> Score:
         All terms.
     """
     tight = sum(
-        layer.count * max(0.0, 1.0 - placed.gap / ranking.preferred_gap)
+        layer.count * max(0.0, 1.0 - placed.smallest_gap / ranking.preferred_gap)
         for layer, placed in zip(layout.layers, placement.layers, strict=True)
     )
     return Score(

@@ -16,9 +16,10 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from engine import Batch, Layout, Section, assess, place
+from engine import Batch, Layout, assess, place
 from engine.assessment import ROUNDING, service_stress
 from engine.crack_control import largest_spacing
+from engine.detailing_checks import opposite_bars
 from engine.layouts import Layer
 from optimizer.candidates import Candidate, short_list
 from optimizer.conditions import SLACK, envelope
@@ -188,7 +189,7 @@ class Search:
             The short list and whether it is proved.
         """
         section, ranking = self.problem.section, self.problem.ranking
-        if not _opposite_fits(section):
+        if not opposite_bars(section).ok:
             return Found(chosen=(), lightest=None, fewest=None, proved=True)
         members = families(envelope(section), self.problem.rules)
         prospects = [_prospect(family, ranking) for family in members]
@@ -283,13 +284,6 @@ class Search:
             placement = place(section, layout)
             if placement.gaps_fit and placement.layers[0].spacing <= s[row] * (1 + ROUNDING):
                 pool.add(Candidate.of(layout, placement, score(layout, placement, ranking)))
-
-
-def _opposite_fits(section: Section) -> bool:
-    """Bars given at the other face have to fit, whatever is chosen here."""
-    if section.opposite is None:
-        return True
-    return place(section.opposite_face(), section.opposite).gaps_fit
 
 
 def one_size_counts(family: Family) -> NDArray[np.int64]:

@@ -28,6 +28,7 @@ from engine import (
     parse_layout,
     place,
 )
+from engine.detailing_checks import opposite_bars
 from optimizer.candidates import Candidate
 from optimizer.problem import SI_MASS_FACTOR, BarRules, Problem, Ranking
 from optimizer.search import Search
@@ -158,7 +159,7 @@ def _random_twin(seed: int) -> _Twin:
         preferred_gap=max(1.5 * unit, 2 * section.aggregate),
         work_limit=100.0,
     )
-    if opposite is not None and not place(section.opposite_face(), opposite).gaps_fit:
+    if not opposite_bars(section).ok:  # such a section has no layout, whatever is chosen
         section = replace(section, opposite=None, count_opposite=False)
     rules = BarRules(
         sizes=bars,

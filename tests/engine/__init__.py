@@ -1,0 +1,1 @@
+"""Tests of the engine, module by module."""
