@@ -10,6 +10,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
@@ -44,6 +45,19 @@ class Flange:
     left: float | None = None
 
 
+@lru_cache(maxsize=256)
+def _edges(
+    strips: tuple[tuple[float, float], ...],
+) -> tuple[FloatArray, FloatArray, FloatArray, FloatArray]:
+    """Strip widths, and depth, area and first moment above each strip's upper edge."""
+    widths = np.array([width for width, _ in strips])
+    heights = np.array([height for _, height in strips])
+    top = np.concatenate(([0.0], np.cumsum(heights)))
+    area = np.concatenate(([0.0], np.cumsum(widths * heights)))
+    moment = np.concatenate(([0.0], np.cumsum(widths * heights * (top[:-1] + heights / 2))))
+    return widths, top, area, moment
+
+
 @dataclass(frozen=True, slots=True)
 class Profile:
     """Widths of a section from the compression face to the tension face.
@@ -66,15 +80,6 @@ class Profile:
         """Width at the tension face. [in or mm]"""
         return self.strips[-1][0]
 
-    def _edges(self) -> tuple[FloatArray, FloatArray, FloatArray, FloatArray]:
-        """Strip widths, and depth, area and first moment above each strip's upper edge."""
-        widths = np.array([width for width, _ in self.strips])
-        heights = np.array([height for _, height in self.strips])
-        top = np.concatenate(([0.0], np.cumsum(heights)))
-        area = np.concatenate(([0.0], np.cumsum(widths * heights)))
-        moment = np.concatenate(([0.0], np.cumsum(widths * heights * (top[:-1] + heights / 2))))
-        return widths, top, area, moment
-
     def width_at(self, depth: FloatArray) -> FloatArray:
         """Width at given depths, zero beyond the section.
 
@@ -88,7 +93,7 @@ class Profile:
         ndarray
             Width. [in or mm]
         """
-        widths, top, _, _ = self._edges()
+        widths, top, _, _ = _edges(self.strips)
         strip = np.searchsorted(top[1:], depth, side="right")
         return np.append(widths, 0.0)[strip]
 
@@ -105,7 +110,7 @@ class Profile:
         ndarray
             Area. [in^2 or mm^2]
         """
-        widths, top, area, _ = self._edges()
+        widths, top, area, _ = _edges(self.strips)
         depth = np.clip(depth, 0.0, top[-1])
         strip = np.minimum(np.searchsorted(top[1:], depth), len(widths) - 1)
         return area[strip] + widths[strip] * (depth - top[strip])
@@ -123,7 +128,7 @@ class Profile:
         ndarray
             First moment of area. [in^3 or mm^3]
         """
-        widths, top, _, moment = self._edges()
+        widths, top, _, moment = _edges(self.strips)
         depth = np.clip(depth, 0.0, top[-1])
         strip = np.minimum(np.searchsorted(top[1:], depth), len(widths) - 1)
         return moment[strip] + widths[strip] * (depth**2 - top[strip] ** 2) / 2
@@ -141,7 +146,7 @@ class Profile:
         ndarray
             Depth; infinite where the section has less area. [in or mm]
         """
-        widths, top, areas, _ = self._edges()
+        widths, top, areas, _ = _edges(self.strips)
         strip = np.minimum(np.searchsorted(areas[1:], area), len(widths) - 1)
         depth = top[strip] + (area - areas[strip]) / widths[strip]
         return np.where(area > areas[-1] * (1 + 1e-12), np.inf, depth)

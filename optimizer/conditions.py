@@ -35,6 +35,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 
@@ -69,7 +70,7 @@ class Conditions:
     bounds: FloatArray
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
+@dataclass(frozen=True, kw_only=True)
 class Envelope:
     """Figures of a section that all its families share.
 
@@ -94,6 +95,14 @@ class Envelope:
     block_depth: FloatArray
     block_force: FloatArray
     block_moment: FloatArray
+
+    @cached_property
+    def exempt_area(self) -> float:
+        """Least area that 9.6.1.3 can exempt: 4/3 of the least that strength needs, with steel
+        as deep as its surface may be. [in^2 or mm^2]
+        """
+        section = self.section
+        return 4.0 / 3.0 * floor_area(self, section.outline.depth - section.bar_face)
 
 
 def envelope(section: Section) -> Envelope:
@@ -322,9 +331,8 @@ def minimum_steel(shared: Envelope, bars: tuple[Bar, ...], layers: int) -> Condi
     depth = greatest_depths(section, bars, layers)
     shallow = max(0.0, float(_least_depths(bars, depth).min()))
     by_clause = float(minimum_area(section, np.array([shallow]))[0])
-    exempt = floor_area(shared, float(depth.max())) * 4.0 / 3.0
     areas = np.array([bar.area for bar in bars])
     return Conditions(
         coefficients=np.tile(areas, (1, layers, 1)),
-        bounds=np.array([min(by_clause, exempt) * (1 - SLACK)]),
+        bounds=np.array([min(by_clause, shared.exempt_area) * (1 - SLACK)]),
     )

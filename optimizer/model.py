@@ -161,38 +161,15 @@ def _add_conditions(
             added.only_enforce_if(guard)
 
 
-def _add_wanted(model: cp_model.CpModel, counts: _Counts, wanted: Sequence[Wanted]) -> None:
-    """Leave in only what is of interest for at least one reason.
-
-    The switches are fixed by the counts (each says exactly whether its limit holds), so they
-    do not multiply solutions.
-    """
-    if any(math.isinf(want.limit) for want in wanted):
-        return
-    switches = []
-    for number, want in enumerate(wanted):
-        weights = [[math.floor(cost * _COST_SCALE) for cost in want.cost]] * len(counts.pairs)
-        limit = math.ceil((want.limit - want.constant) * _COST_SCALE) + 1
-        cost = counts.weighted(weights)
-        if len(wanted) == 1:
-            model.add(cost <= limit)
-            return
-        switch = model.new_bool_var(f"wanted {number}")
-        model.add(cost <= limit).only_enforce_if(switch)
-        model.add(cost > limit).only_enforce_if(~switch)
-        switches.append(switch)
-    model.add_bool_or(switches)
-
-
-def build(family: Family, wanted: Sequence[Wanted]) -> tuple[cp_model.CpModel, _Counts]:
+def build(family: Family, wanted: Wanted | None) -> tuple[cp_model.CpModel, _Counts]:
     """Build the model of a family.
 
     Parameters
     ----------
     family : Family
         What may be chosen and the conditions on it.
-    wanted : sequence of Wanted
-        Reasons for which a layout is of interest; one is enough.
+    wanted : Wanted or None
+        Bound on what is of interest; None for everything.
 
     Returns
     -------
@@ -208,7 +185,10 @@ def build(family: Family, wanted: Sequence[Wanted]) -> tuple[cp_model.CpModel, _
     model.add(counts.in_layer(0) >= family.least_first)
     for conditions in family.conditions.values():
         _add_conditions(model, counts, conditions)
-    _add_wanted(model, counts, wanted)
+    if wanted is not None and math.isfinite(wanted.limit):
+        weights = [[math.floor(cost * _COST_SCALE) for cost in wanted.cost]] * family.layers
+        limit = math.ceil((wanted.limit - wanted.constant) * _COST_SCALE)
+        model.add(counts.weighted(weights) <= limit)
     return model, counts
 
 
@@ -231,13 +211,15 @@ class _Collector(cp_model.CpSolverSolutionCallback):
             self.stop_search()
 
 
-def solver(work: float, *, presolve: bool = False) -> cp_model.CpSolver:
+def solver(work: float, *, layers: int = 1, presolve: bool = False) -> cp_model.CpSolver:
     """Set up the solver: one worker and a fixed seed, so that equal jobs give equal answers.
 
     Parameters
     ----------
     work : float
         Deterministic time allowed.
+    layers : int
+        Layers of the family: with three the linear relaxation pays, with fewer it does not.
     presolve : bool
         These models are so small that presolve costs more than it saves; it is switched on to
         confirm an infeasible answer by another way.
@@ -251,7 +233,9 @@ def solver(work: float, *, presolve: bool = False) -> cp_model.CpSolver:
     engine.parameters.num_workers = 1
     engine.parameters.random_seed = 1
     engine.parameters.cp_model_presolve = presolve
-    engine.parameters.linearization_level = 0
+    engine.parameters.linearization_level = 1 if layers > 2 else 0
+    engine.parameters.cut_level = 0
+    engine.parameters.add_lp_constraints_lazily = False
     engine.parameters.symmetry_level = 0
     engine.parameters.cp_model_probing_level = 0
     engine.parameters.max_deterministic_time = max(work, 0.0)
@@ -260,7 +244,7 @@ def solver(work: float, *, presolve: bool = False) -> cp_model.CpSolver:
 
 def enumerate_family(
     family: Family,
-    wanted: Sequence[Wanted],
+    wanted: Wanted | None,
     work: float,
     *,
     presolve: bool = False,
@@ -272,8 +256,8 @@ def enumerate_family(
     ----------
     family : Family
         What may be chosen and the conditions on it.
-    wanted : sequence of Wanted
-        Reasons for which a layout is of interest; one is enough.
+    wanted : Wanted or None
+        Bound on what is of interest; None for everything.
     work : float
         Deterministic time allowed.
     presolve : bool
@@ -287,7 +271,7 @@ def enumerate_family(
         All solutions, or those found before a limit.
     """
     model, counts = build(family, wanted)
-    engine = solver(work, presolve=presolve)
+    engine = solver(work, layers=family.layers, presolve=presolve)
     engine.parameters.enumerate_all_solutions = True
     collector = _Collector(counts, stop_after)
     status = engine.solve(model, collector)
@@ -334,7 +318,7 @@ def blocking_rules(family: Family, work: float) -> tuple[str, ...]:
         """Rules the solver names, or None if the given ones can be met together."""
         model.clear_assumptions()
         model.add_assumptions([guards[rule] for rule in rules])
-        engine = solver(work)
+        engine = solver(work, layers=family.layers)
         if engine.solve(model) != cp_model.INFEASIBLE:
             return None
         named = set(engine.sufficient_assumptions_for_infeasibility())

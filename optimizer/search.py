@@ -11,6 +11,7 @@ are done, nothing left out is better than the last line shown.
 from __future__ import annotations
 
 import math
+from collections.abc import Callable
 from dataclasses import dataclass, replace
 
 import numpy as np
@@ -21,6 +22,7 @@ from engine.assessment import ROUNDING, service_stress
 from engine.crack_control import largest_spacing
 from engine.detailing_checks import opposite_bars
 from engine.layouts import Layer
+from engine.outlines import FloatArray
 from optimizer.candidates import Candidate, short_list
 from optimizer.conditions import SLACK, envelope
 from optimizer.families import Family, families
@@ -30,7 +32,9 @@ from optimizer.scoring import score, steel_per_bar
 from optimizer.totals import Totals, possible_totals
 
 _VALUE_SLACK = 2e-6  # values equal to six decimals are ties and have to be compared in full
-_FIRST_BAND, _BAND_GROWTH = 1.06, 1.25
+_FEW = 20  # totals of bars in the first band of a family, and in each further one
+_FIRST_LIST = 30  # layouts listed at first in a family
+_QUICK_LAYERS = 2
 _SEED_TRIES = 8
 
 
@@ -115,6 +119,19 @@ class _Prospect:
         """Lower bound of a value over the family."""
         return self.totals.least(want.cost) + want.constant
 
+    def bands(self) -> FloatArray:
+        """Limits of growing value that part a large family; none for a small one."""
+        values = np.sort(self._values(self.main))
+        return values[_FEW::_FEW]
+
+    def _values(self, want: Wanted) -> FloatArray:
+        values: FloatArray = self.totals.counts @ np.array(want.cost) + want.constant
+        return values
+
+    def beyond(self, known: float, want: Wanted, limit: float) -> bool:
+        """Whether totals within a limit lie beyond what the main list has covered."""
+        return bool(((self._values(want) <= limit) & (self._values(self.main) > known)).any())
+
 
 def _prospect(family: Family, ranking: Ranking) -> _Prospect:
     mass = Wanted(tuple(bar.mass for bar in family.bars), 0.0, math.inf)
@@ -194,7 +211,9 @@ class Search:
         members = families(envelope(section), self.problem.rules)
         prospects = [_prospect(family, ranking) for family in members]
         prospects = [item for item in prospects if math.isfinite(item.least)]
-        prospects.sort(key=lambda item: item.least)  # stable: ties keep the families' order
+        # Families of few layers are quick to list and lower the limits for those of many. The
+        # sort is stable: ties keep the families' order.
+        prospects.sort(key=lambda item: (item.family.layers > _QUICK_LAYERS, item.least))
         for prospect in prospects:
             if len(prospect.family.bars) == 1:
                 self._seed(prospect)
@@ -204,7 +223,7 @@ class Search:
             # Nobody is told "none" on one answer of the solver: it is asked again with
             # presolve, another way to the same answer.
             for prospect in prospects:
-                listed = enumerate_family(prospect.family, (), self.work_left, presolve=True)
+                listed = enumerate_family(prospect.family, None, self.work_left, presolve=True)
                 self.complete &= listed.complete
                 self._judge(prospect, listed.counts)
         candidates = self.pool.candidates.values()
@@ -226,36 +245,52 @@ class Search:
         self._judge(prospect, counts[order])
 
     def _explore(self, prospect: _Prospect) -> None:
-        """List what may still be of interest, in bands of growing value while nothing of the
-        pattern is known that would limit it.
+        """List what may still be of interest in a family, for each reason of interest."""
+        pool, pattern = self.pool, prospect.family.pattern
+        main = prospect.main
+        # In large families bands of growing value come first: what the cheapest members teach
+        # keeps the list of the others short.
+        for upto in prospect.bands():
+            if upto >= pool.limit(pattern):
+                break
+            self._list(prospect, main, lambda: pool.limit(pattern), upto)
+        known = self._list(prospect, main, lambda: pool.limit(pattern))
+        if self.problem.ranking.by != "lightest" and prospect.beyond(
+            known, prospect.mass, pool.least_mass
+        ):
+            self._list(prospect, prospect.mass, lambda: pool.least_mass)
+        if prospect.beyond(known, prospect.bars, pool.fewest_bars):
+            self._list(prospect, prospect.bars, lambda: pool.fewest_bars)
+
+    def _list(
+        self,
+        prospect: _Prospect,
+        want: Wanted,
+        limit: Callable[[], float],
+        band: float = math.inf,
+    ) -> float:
+        """List all members up to a limit that what is found may lower, or to the end of a band
+        if that is less; return where it ended.
+
+        The solver stops after a few, the engine decides about them, and with the limit that
+        follows it starts again, until it says that it has listed all.
         """
-        family = prospect.family
-        band = prospect.least * _FIRST_BAND
-        most = 2 * prospect.main.constant + sum(
-            max(cost * count for cost, count in zip(prospect.main.cost, row, strict=True)) * 2
-            for row in family.most
-        )
+        stop_after = _FIRST_LIST
         while True:
-            limit = self.pool.limit(family.pattern)
-            target = limit if band >= min(limit, most) else band
-            bounded = (
-                (prospect.main, target),
-                (prospect.mass, self.pool.least_mass),
-                (prospect.bars, self.pool.fewest_bars),
+            bounded = replace(want, limit=min(limit(), band))
+            if prospect.least_of(want) > bounded.limit:
+                return bounded.limit
+            listed = enumerate_family(
+                prospect.family, bounded, self.work_left, stop_after=stop_after
             )
-            wanted = [
-                replace(want, limit=bound)
-                for want, bound in bounded
-                if prospect.least_of(want) <= bound
-            ]
-            if wanted:
-                listed = enumerate_family(family, wanted, self.work_left)
-                self.work_left -= listed.work
-                self.complete &= listed.complete
-                self._judge(prospect, listed.counts)
-            if target == limit or not self.complete:
-                return
-            band *= _BAND_GROWTH
+            self.work_left -= listed.work
+            self._judge(prospect, listed.counts)
+            if listed.complete:
+                return bounded.limit
+            if len(listed.counts) < stop_after:
+                self.complete = False  # the work limit, not the length of the list, ended it
+                return bounded.limit
+            stop_after *= 4
 
     def _judge(self, prospect: _Prospect, counts: NDArray[np.int64]) -> None:
         """Let the engine decide about layouts, the cheapest first, as far as they matter."""

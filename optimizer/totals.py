@@ -67,15 +67,15 @@ def possible_totals(family: Family) -> Totals:
     upper_layers = family.layers - 1
     counts = counts[counts.sum(axis=1) >= family.least_first + 2 * upper_layers]
     for rule, conditions in family.conditions.items():
+        coefficients, bounds = conditions.coefficients, conditions.bounds
         if rule == "clear_gap":
             # All layers together offer the sum of their widths, at the least weight anywhere.
-            weights = conditions.coefficients.sum(axis=1).max(axis=0)
-            counts = counts[counts @ weights >= conditions.bounds.sum() * (1 + SLACK)]
+            weights = coefficients.sum(axis=1).max(axis=0)
+            counts = counts[counts @ weights >= bounds.sum() * (1 + SLACK)]
             continue
-        for coefficients, bound in zip(conditions.coefficients, conditions.bounds, strict=True):
-            best = coefficients.max(axis=0)
-            # Each layer above the first holds two bars at least, which count for less there.
-            lost = 2 * (best - coefficients[1:]).min(axis=1).sum()
-            reached = counts @ best - lost
-            counts = counts[reached >= bound - SLACK * abs(bound)]
+        best = coefficients.max(axis=1)
+        # Each layer above the first holds two bars at least, which count for less there.
+        lost = 2 * (best[:, None] - coefficients[:, 1:]).min(axis=2).sum(axis=1)
+        reached = counts @ best.T - lost
+        counts = counts[(reached >= bounds - SLACK * np.abs(bounds)).all(axis=1)]
     return Totals(counts)

@@ -1,0 +1,1 @@
+"""Benchmarks, run on request; see DEVELOPERS.md."""
