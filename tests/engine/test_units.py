@@ -190,7 +190,7 @@ def test_plain_numbers_are_in_the_unit_of_their_key(
     "text",
     [
         *("", "   ", "in", "nan in", "inf in", "-inf in", "--24 in", "+-24 in", "\u00b2 in"),
-        *("1/0", "24 in\n5", "\x00", "1234567890123456 in", "\u221224 in"),
+        *("1/0", "24 in\n5", "\x00", "1234567890123456 in"),
     ],
 )
 def test_text_that_is_no_quantity(text: str) -> None:

@@ -1,0 +1,95 @@
+"""Run the benchmarks and print their tables: ``python -m tests.benchmarks``."""
+
+from __future__ import annotations
+
+import statistics
+import subprocess
+import sys
+import time
+
+import numpy as np
+
+from engine import BarGroups, flexural_state
+from optimizer.results import rank_section
+from tests.benchmarks.alternatives import Outcome, enumerate_everything, evolve
+from tests.benchmarks.sections import Case, benchmark_set
+
+_RUNS = 5
+_STRENGTHS = 1_000_000
+
+
+def demo_seconds() -> list[float]:
+    """Cold processes of ``cagewright demo``."""
+    times = []
+    for _ in range(_RUNS):
+        start = time.perf_counter()
+        subprocess.run([sys.executable, "-m", "optimizer", "demo"], check=True, capture_output=True)
+        times.append(time.perf_counter() - start)
+    return times
+
+
+def section_seconds(cases: list[Case]) -> list[float]:
+    """Best of three warm runs of every section, ten candidates with proof."""
+    for case in cases[:2]:
+        rank_section(case.problem)
+    times = []
+    for case in cases:
+        runs = []
+        for _ in range(3):
+            start = time.perf_counter()
+            result = rank_section(case.problem)
+            runs.append(time.perf_counter() - start)
+            assert result.proved
+        times.append(min(runs))
+    return times
+
+
+def strength_seconds(case: Case) -> float:
+    """Strength of a million two-layer layouts of two sizes."""
+    rng = np.random.default_rng(1)
+    section = case.problem.section
+    sizes = np.array([[0.79, 0.60, 0.79, 0.60]])
+    counts = rng.integers(0, 4, (_STRENGTHS, 4)) + np.array([[1, 0, 0, 0]])
+    groups = BarGroups(
+        area=counts * sizes,
+        depth=np.broadcast_to(np.array([21.5, 21.56, 19.5, 19.56]), counts.shape),
+        diameter=np.broadcast_to(np.array([1.0, 0.875, 1.0, 0.875]), counts.shape),
+    )
+    start = time.perf_counter()
+    flexural_state(section.profile, section.concrete, section.steel, groups)
+    return time.perf_counter() - start
+
+
+def _shown(outcome: Outcome, best: float) -> str:
+    if outcome.score is None:
+        return f"{outcome.seconds:7.2f} s  no answer"
+    return f"{outcome.seconds:7.2f} s  {outcome.score:7.3f} ({outcome.score / best - 1:+.1%})"
+
+
+def main() -> None:
+    """Print all tables."""
+    print(f"demo, cold process: median {statistics.median(demo_seconds()):.2f} s of {_RUNS}")
+    cases = benchmark_set()
+    times = section_seconds(cases)
+    print(
+        f"one section, 10 candidates with proof, warm: median"
+        f" {1e3 * statistics.median(times):.0f} ms, worst {1e3 * max(times):.0f} ms"
+        f" over {len(times)} sections"
+    )
+    for case, seconds in zip(cases, times, strict=True):
+        print(f"  {1e3 * seconds:6.0f} ms  {case.name}")
+    print(f"strength of {_STRENGTHS:,} two-layer layouts: {strength_seconds(cases[4]):.2f} s")
+    print("best practical score: this tool, every layout enumerated, differential evolution")
+    for case in cases:
+        if case.problem.ranking.by != "practical":
+            continue
+        start = time.perf_counter()
+        best = rank_section(case.problem).layouts[0].score.total
+        mine = time.perf_counter() - start
+        everything = _shown(enumerate_everything(case.problem), best)
+        evolved = _shown(evolve(case.problem), best)
+        print(f"  {mine:5.2f} s {best:8.3f} | {everything} | {evolved} | {case.name}", flush=True)
+
+
+if __name__ == "__main__":
+    main()

@@ -1,0 +1,1 @@
+"""Tests of the search, the job file and the results."""
