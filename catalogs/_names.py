@@ -71,5 +71,5 @@ def find(what: str, name: str, items: Mapping[str, Item], also: str = "") -> Ite
     message = f"{what} {shown(name)} is not known; allowed: {', '.join(allowed)}{also}"
     guess = nearest(name, allowed)
     if guess is not None:
-        message += f"\nhint: the nearest name is {guess!r}"
+        message += f"; hint: the nearest name is {guess!r}"
     raise UnknownNameError(message, name=name, allowed=allowed)

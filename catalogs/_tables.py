@@ -94,7 +94,7 @@ def table_error(
         place += f", row {row}"
     if column is not None:
         place += f", column {column}"
-    message = f"{place}: {problem}" + (f"\nhint: {hint}" if hint else "")
+    message = f"{place}: {problem}" + (f"; hint: {hint}" if hint else "")
     return TableError(message, file=file, row=row, column=column)
 
 

@@ -86,7 +86,7 @@ class SteelGrade:
             listed = tuple(name for name, value in strengths.items() if value is not None)
             msg = (
                 f"steel grade {self.name!r} is not listed in system {system!r}; "
-                f"allowed: {', '.join(listed)}\nhint: give fy instead of a grade"
+                f"allowed: {', '.join(listed)}; hint: give fy instead of a grade"
             )
             raise UnknownNameError(msg, name=system, allowed=listed)
         return strength

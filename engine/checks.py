@@ -167,7 +167,6 @@ def _checked(
             detailing_checks.cover(section, layout),
             crack_checks.side_face_steel(section, stress),
             crack_checks.flange_steel(section),
-            detailing_checks.opposite_bars(section),
-            detailing_checks.compression_ties(section),
+            *detailing_checks.section_rows(section),
         ),
     )

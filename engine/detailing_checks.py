@@ -217,6 +217,22 @@ def opposite_bars(section: Section) -> Check:
     return replace(row, state=State.FAILS, note=note)
 
 
+def section_rows(section: Section) -> tuple[Check, ...]:
+    """Rows that no layout at the tension face changes; where one fails, every layout does.
+
+    Parameters
+    ----------
+    section : Section
+        Section with its demand.
+
+    Returns
+    -------
+    tuple of Check
+        Bars given at the other face, and the support of counted ones.
+    """
+    return (opposite_bars(section), compression_ties(section))
+
+
 def compression_ties(section: Section) -> Check:
     """Lateral support of counted compression bars, 9.7.6.4.
 

@@ -10,7 +10,7 @@ from catalogs import Bar, BarCatalog
 from engine.errors import LayoutError
 
 # A size that starts with a digit needs a blank before it: "4 16" is four bars, "416" is none.
-_GROUP = re.compile(r"^\s*(\d{1,3})(?:\s+(\S{1,20})|([^\d\s]\S{0,19}))\s*$")
+_GROUP = re.compile(r"^\s*(\d{1,3})(?:\s+(\S{1,20})|([^\d\s]\S{0,19}))\s*$", re.ASCII)
 MOST_LAYERS = 9
 MOST_BARS = 99
 

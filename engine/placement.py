@@ -242,7 +242,7 @@ def stack(lines: tuple[float, ...], diameters: tuple[float, ...]) -> tuple[float
     tuple of float or None
         Bar centres, or None where no symmetric choice exists: more bars than lines, an odd
         count over an even one, or lines that are not symmetric themselves. Of choices with the
-        same smallest gap the outermost lines win.
+        same smallest gap the outermost lines win. [in or mm]
     """
     count = len(diameters)
     if count > len(lines) or (count % 2 and len(lines) % 2 == 0):

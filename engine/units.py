@@ -98,11 +98,11 @@ _LARGEST = 10**18  # inner units
 _LONGEST = 60  # no honest quantity is longer; keeps hostile input cheap
 _UNSIGNED = r"(?:\d{1,15}(?:\.\d{0,15})?|\.\d{1,15})(?:[eE][+-]?\d{1,2})?"
 _NUMBER = rf"(?:\d{{1,6}}[ -]\d{{1,4}}/\d{{1,4}}|\d{{1,6}}/\d{{1,4}}|{_UNSIGNED})"
-_SIMPLE = re.compile(rf"^([+-]?)\s*({_NUMBER})\s*([^\d\s].*)$")
-_BARE = re.compile(rf"^([+-]?)\s*({_NUMBER})$")
+_SIMPLE = re.compile(rf"^([+-]?)\s*({_NUMBER})\s*([^\d\s].*)$", re.ASCII)
+_BARE = re.compile(rf"^([+-]?)\s*({_NUMBER})$", re.ASCII)
 _FEET_INCHES = re.compile(
     rf"^([+-]?)\s*({_UNSIGNED})\s*(?:ft|feet|foot|')\s*-?\s*({_NUMBER})\s*(?:in|inch|inches|\")$",
-    re.IGNORECASE,
+    re.IGNORECASE | re.ASCII,
 )
 
 

@@ -1,5 +1,9 @@
 """Search, ranking and reports of reinforcing-bar layouts for concrete beam sections."""
 
+from optimizer._origin import stop_if_foreign
+
+stop_if_foreign()
+
 from optimizer.errors import DefectError, JobError, OptimizerError, OutputError
 from optimizer.job import Job, parse_job, read_job
 from optimizer.results import (

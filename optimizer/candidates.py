@@ -122,7 +122,7 @@ def short_list(candidates: Iterable[Candidate], ranking: Ranking) -> list[Candid
     Parameters
     ----------
     candidates : iterable of Candidate
-        All that are known.
+        All that are known, in the ranking's order.
     ranking : Ranking
         Order, length and variety wanted.
 
@@ -133,7 +133,7 @@ def short_list(candidates: Iterable[Candidate], ranking: Ranking) -> list[Candid
     """
     taken: Counter[tuple[int, int]] = Counter()
     chosen: list[Candidate] = []
-    for candidate in sorted(candidates, key=lambda item: item.key(ranking.by)):
+    for candidate in candidates:
         if ranking.per_pattern is not None and taken[candidate.pattern] >= ranking.per_pattern:
             continue
         taken[candidate.pattern] += 1

@@ -6,25 +6,30 @@ layout fails; 2 bad input or usage. Data go to standard output, talk to standard
 
 from __future__ import annotations
 
+import io
 import os
 import sys
 from collections.abc import Iterator
-from contextlib import contextmanager
+from contextlib import contextmanager, suppress
 from dataclasses import replace
-from importlib.metadata import version
 from importlib.resources import files
 from pathlib import Path
-from typing import Annotated
+from typing import TYPE_CHECKING, Annotated
 
 import typer
 from rich.console import Console
+from rich.text import Text
 
 from catalogs import BUILTIN_CATALOGS, CatalogError, bar_catalog
 from engine import EngineError
-from optimizer.errors import JobError, OptimizerError
-from optimizer.files import write_text
+from optimizer._version import VERSION
+from optimizer.errors import DefectError, JobError, OptimizerError
+from optimizer.files import check_target, write_text
 from optimizer.job import Job, parse_job, read_job
 from optimizer.results import CheckResult, Progress, RankResult
+
+if TYPE_CHECKING:
+    from optimizer.views import View
 
 app = typer.Typer(
     name="cagewright",
@@ -60,9 +65,21 @@ Show = Annotated[
 Brief = Annotated[bool, typer.Option("--brief", help="Short lists only, without checks.")]
 
 
+class _ReaderGone(Exception):  # noqa: N818 - no error: the reader has seen enough
+    """Whoever reads standard output has closed it (head, less)."""
+
+
+class _DataConsole(Console):
+    """Console for data whose reader may leave early."""
+
+    def on_broken_pipe(self) -> None:
+        """Stop quietly instead of exiting with 1, which means something else here."""
+        raise _ReaderGone
+
+
 def _print_version(value: bool) -> None:
     if value:
-        typer.echo(f"cagewright {version('cagewright')}")
+        typer.echo(f"cagewright {VERSION}")
         raise typer.Exit
 
 
@@ -81,16 +98,21 @@ def _options(
     """Options before the command."""
 
 
-def _console() -> Console:
-    """Console for data: never narrower than what reports are made for."""
-    console = Console(highlight=False, soft_wrap=False)
-    if console.width < _NARROWEST or not console.is_terminal:
-        console = Console(highlight=False, soft_wrap=False, width=max(_NARROWEST, console.width))
-    return console
+def _view(*, plain: bool) -> View:
+    """View on standard output, never narrower than what reports are made for."""
+    from optimizer.views import View
+
+    if isinstance(sys.stdout, io.TextIOWrapper):
+        # A mark may hold characters that the terminal's encoding lacks.
+        sys.stdout.reconfigure(errors="replace")
+    console = _DataConsole(highlight=False, soft_wrap=False)
+    if not console.is_terminal or console.width < _NARROWEST:
+        console = _DataConsole(highlight=False, soft_wrap=False, width=_NARROWEST)
+    return View(console, plain_text=plain or not _in_unicode())
 
 
-def _plain_needed(console: Console) -> bool:
-    return "utf" not in (console.encoding or "").lower()
+def _in_unicode() -> bool:
+    return "utf" in (getattr(sys.stdout, "encoding", None) or "").lower()
 
 
 @contextmanager
@@ -100,7 +122,7 @@ def _progress() -> Iterator[Progress]:
     with talk.status("") as status:
 
         def tell(done: int, of: int, mark: str) -> None:
-            status.update(f"section {done + 1} of {of}: {mark}")
+            status.update(Text(f"section {done + 1} of {of}: {mark}"))
 
         yield tell
 
@@ -118,15 +140,25 @@ def _selected(job: Job, only: list[str] | None) -> Job:
     )
 
 
+def _check_json(target: str | None, job_file: Path | None = None) -> None:
+    """Refuse an impossible place before the work, not after it."""
+    if target is not None and target != "-":
+        check_target(Path(target), sources=() if job_file is None else (job_file,))
+
+
 def _put_json(result: RankResult | CheckResult, target: str) -> bool:
     """Write JSON; True if nothing else is to be printed."""
     from optimizer.json_output import to_json
 
-    if target == "-":
-        sys.stdout.write(to_json(result))
-        return True
-    write_text(Path(target), to_json(result))
-    return False
+    if target != "-":
+        write_text(Path(target), to_json(result))
+        return False
+    try:
+        sys.stdout.write(to_json(result, ascii_only=not _in_unicode()))
+        sys.stdout.flush()
+    except BrokenPipeError:
+        raise _ReaderGone from None
+    return True
 
 
 @app.command("rank")
@@ -139,19 +171,18 @@ def rank_command(
     plain: Plain = False,
 ) -> None:
     """Ranked short list of bar layouts for every section of a job."""
+    _check_json(json_file, job_file)
     _rank(_selected(read_job(job_file), only), json_file, show, brief, plain)
 
 
 def _rank(job: Job, json_file: str | None, show: int | None, brief: bool, plain: bool) -> None:
     from optimizer.results import rank
-    from optimizer.views import View
 
     with _progress() as tell:
         result = rank(job, tell)
     if json_file is not None and _put_json(result, json_file):
         raise typer.Exit(0 if result.ok else 1)
-    console = _console()
-    view = View(console, plain_text=plain or _plain_needed(console))
+    view = _view(plain=plain)
     view.title(job.title, job.edition.name)
     for section in result.sections:
         view.ranked(section, show=show, brief=brief)
@@ -165,14 +196,13 @@ def check_command(
 ) -> None:
     """Full check of the layouts given in a job (key `layers`)."""
     from optimizer.results import check
-    from optimizer.views import View
 
+    _check_json(json_file, job_file)
     job = _selected(read_job(job_file), only)
     result = check(job)
     if json_file is not None and _put_json(result, json_file):
         raise typer.Exit(0 if result.ok else 1)
-    console = _console()
-    view = View(console, plain_text=plain or _plain_needed(console))
+    view = _view(plain=plain)
     view.title(job.title, job.edition.name)
     for section in result.sections:
         view.checked_section(section)
@@ -206,11 +236,10 @@ def demo_command(
         write_text(job_file, text, replace=False)
         typer.echo(f"{job_file} written; run: cagewright rank {job_file}")
         return
-    try:
-        _rank(parse_job(text, name="demo"), json_file, show, brief, plain)
-    except typer.Exit:
+    _check_json(json_file)
+    with suppress(typer.Exit):
         # One of the demo's sections has no layout on purpose; the demo itself went well.
-        return
+        _rank(parse_job(text, name="demo"), json_file, show, brief, plain)
 
 
 @app.command("new")
@@ -235,12 +264,10 @@ def bars_command(
     plain: Plain = False,
 ) -> None:
     """Print the bar catalogues."""
-    from optimizer.views import View
-
-    console = _console()
-    view = View(console, plain_text=plain or _plain_needed(console))
-    for name in catalog or BUILTIN_CATALOGS:
-        view.catalog(bar_catalog(name))
+    tables = [bar_catalog(name) for name in catalog or BUILTIN_CATALOGS]
+    view = _view(plain=plain)
+    for table in tables:
+        view.catalog(table)
 
 
 def run(arguments: list[str] | None = None) -> int:
@@ -259,31 +286,44 @@ def run(arguments: list[str] | None = None) -> int:
     debug = "--debug" in (sys.argv[1:] if arguments is None else arguments)
     try:
         outcome = app(args=arguments, standalone_mode=False)
+        sys.stdout.flush()
     except typer.Exit as stop:
         return stop.exit_code
     except typer.Abort:
         return 130
-    except (OptimizerError, EngineError, CatalogError) as error:
-        if debug:
-            raise
-        print(f"cagewright: {error}", file=sys.stderr)  # noqa: T201 - the one place that does
-        return 2 if not isinstance(error, RuntimeError) else 3
-    except BrokenPipeError:
-        # The reader has seen enough (head, less): no reason to complain.
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())  # flushed at exit
+    except (_ReaderGone, BrokenPipeError):
+        _leave_stdout()
         return 0
     except Exception as error:
-        click_exit = getattr(error, "exit_code", None)
-        show = getattr(error, "show", None)
-        if click_exit is not None and show is not None:
-            show()  # usage errors of the argument parser, to standard error
-            return int(click_exit)
         if debug:
             raise
-        print(  # noqa: T201
-            f"cagewright: defect: {type(error).__name__}: {error}; please report it with the job;"
-            " --debug shows where",
-            file=sys.stderr,
-        )
-        return 3
+        return _fault(error)
     return int(outcome or 0)
+
+
+def _leave_stdout() -> None:
+    """Point standard output elsewhere, so that flushing it at exit does not complain."""
+    with suppress(OSError, ValueError):
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+
+
+def _fault(error: Exception) -> int:
+    """Say what went wrong on standard error; 2 if it is the user's to mend, 3 if ours."""
+    if isinstance(error, DefectError):
+        return _say(f"defect: {error}; please report it with the job", 3)
+    if isinstance(error, OptimizerError | EngineError | CatalogError):
+        return _say(str(error), 2)
+    show = getattr(error, "show", None)
+    if show is not None:  # usage errors of the argument parser
+        show()
+        return int(getattr(error, "exit_code", 2))
+    if isinstance(error, OSError):
+        _leave_stdout()
+        return _say(f"output: {error.strerror or error}", 2)
+    text = f"defect: {type(error).__name__}: {error}; please report it with the job"
+    return _say(f"{text}; --debug shows where", 3)
+
+
+def _say(message: str, code: int) -> int:
+    print(f"cagewright: {message}", file=sys.stderr)  # noqa: T201 - the one place that does
+    return code

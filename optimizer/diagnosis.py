@@ -17,7 +17,7 @@ from engine import (
 )
 from engine.assessment import ROUNDING, service_stress
 from engine.crack_control import largest_spacing
-from engine.detailing_checks import opposite_bars
+from engine.detailing_checks import section_rows
 from optimizer.conditions import envelope
 from optimizer.families import Empty, Family, all_families, family_of
 from optimizer.model import blocking_rules, enumerate_family
@@ -91,8 +91,9 @@ def diagnose(problem: Problem) -> Diagnosis:
 
 def _blocked_by(problem: Problem) -> tuple[Block, ...]:
     section, work = problem.section, problem.ranking.work_limit
-    if not opposite_bars(section).ok:
-        return (Block(id="opposite_bars", families=1, of=1),)
+    failing = [row.id for row in section_rows(section) if not row.ok]
+    if failing:
+        return tuple(Block(id=rule, families=1, of=1) for rule in failing)
     found: Counter[str] = Counter()
     everything = all_families(envelope(section), problem.rules)
     for item in everything:
@@ -124,6 +125,8 @@ def _strongest(problem: Problem) -> CheckedLayout | None:
     a family has none left.
     """
     section, work = problem.section, problem.ranking.work_limit
+    if any(not row.ok for row in section_rows(section)):
+        return None
     best: tuple[float, Family, np.ndarray[tuple[int, ...], np.dtype[np.int64]]] | None = None
 
     def improve(family: Family, counts: np.ndarray[tuple[int, ...], np.dtype[np.int64]]) -> bool:
@@ -150,7 +153,7 @@ def _strongest(problem: Problem) -> CheckedLayout | None:
     def stronger(value: float) -> Section:
         # The demand enters the conditions on strength and minimum steel only; the latter's
         # exemption asks for less at a lower demand, so nothing is lost.
-        return replace(section, Mu=value if section.sagging else -value, Ms=None)
+        return replace(section, Mu=value if section.sagging else -value)
 
     shared = envelope(section)
     members = [item for item in all_families(shared, problem.rules) if isinstance(item, Family)]
@@ -166,8 +169,8 @@ def _strongest(problem: Problem) -> CheckedLayout | None:
                 break
             listed = enumerate_family(raised, None, work, stop_after=limit)
             if not improve(raised, listed.counts):
-                if listed.complete:
-                    break
+                if listed.complete or len(listed.counts) < limit:
+                    break  # all listed, or the work limit reached
                 limit *= 4
     if best is None:
         return None

@@ -8,12 +8,14 @@ that are too wide for the page are cut off and deep webs broken, both marked as 
 from __future__ import annotations
 
 import math
+import textwrap
 from dataclasses import dataclass
 from itertools import pairwise
 
 from engine import CheckedLayout, Placement, Section, place
 from engine.units import plain
 
+_PAGE = 80  # columns of a page
 _WIDEST = 50  # columns for the concrete; the rest of 80 is for the notes beside it
 _USUAL, _HIGHEST = 16, 24  # rows: as drawn if bars and layers stay apart, and at most
 _OVERHANG = 8  # columns of an overhang that has to be cut
@@ -131,9 +133,17 @@ def draw(checked: CheckedLayout, ink: Ink = UNICODE) -> list[str]:
             canvas.put(column, scale.y(start * 2 * scale.column), ink.broken)
     lines = [f"  {line}" for line in canvas.lines()]
     width = max(len(line) for line in lines) + 2
-    for row, note in notes.items():
-        lines[row] = f"{lines[row]:<{width}}{note}"
-    return [*lines, f"  {_caption(section, overhangs, scale)}"]
+    below = []
+    if width + max(len(note) for note in notes.values()) <= _PAGE:
+        for row, note in notes.items():
+            lines[row] = f"{lines[row]:<{width}}{note}"
+    else:
+        # No room beside the drawing: the notes follow it, from top to bottom.
+        below = [notes[row] for row in sorted(notes)]
+    text = [*below, _caption(section, overhangs, scale)]
+    return lines + [
+        f"  {line}" for paragraph in text for line in textwrap.wrap(paragraph, _PAGE - 2)
+    ]
 
 
 def _scale(section: Section, faces: list[tuple[Placement, bool]]) -> _Scale:
@@ -167,6 +177,7 @@ def _overhangs(section: Section, scale: _Scale) -> dict[str, tuple[int, int]]:
     """Columns left and right of the web for each flange, cut to what fits."""
     found = {}
     room = max(_OVERHANG, (_WIDEST - scale.web_columns) // 2)
+    room = min(room, (_PAGE - 6 - scale.web_columns) // 2)
     for name, flange in (("top", section.outline.top), ("bottom", section.outline.bottom)):
         if flange is None:
             continue
@@ -257,11 +268,20 @@ def _stirrup(canvas: _Canvas, section: Section, scale: _Scale, ink: Ink) -> None
         canvas.put(right, row, ink.stirrup)
 
 
-def _row_of(section: Section, scale: _Scale, bottom: float, diameter: float, low: bool) -> int:
-    centre = bottom + diameter / 2
-    from_top = section.outline.depth - centre if low else centre
-    row = scale.y(from_top)
-    return min(max(row, 1), scale.y(section.outline.depth) - 1)
+def _layer_rows(section: Section, scale: _Scale, placement: Placement, low: bool) -> list[int]:
+    """Row of each layer; in a drawing too coarse to part two layers they still get their own."""
+    rows: list[int] = []
+    last = scale.y(section.outline.depth) - 1
+    for layer in placement.layers:
+        centre = layer.bottom + max(layer.diameters) / 2
+        row = scale.y(section.outline.depth - centre if low else centre)
+        row = min(max(row, 1), last)
+        if rows and low:
+            row = min(row, rows[-1] - 1)
+        elif rows:
+            row = max(row, rows[-1] + 1)
+        rows.append(row)
+    return rows
 
 
 def _bars(
@@ -274,8 +294,8 @@ def _bars(
     ink: Ink,
 ) -> None:
     largest = checked.layout.sizes[0].diameter
-    for layer in placement.layers:
-        row = _row_of(section, scale, layer.bottom, max(layer.diameters), at_bottom)
+    rows = _layer_rows(section, scale, placement, at_bottom)
+    for layer, row in zip(placement.layers, rows, strict=True):
         for x, diameter in zip(layer.x, layer.diameters, strict=True):
             canvas.put(scale.x(x), row, ink.bars[0 if diameter >= largest else 1])
 
@@ -284,8 +304,8 @@ def _notes(
     notes: dict[int, str], section: Section, scale: _Scale, placement: Placement, at_bottom: bool
 ) -> None:
     unit = section.length_unit
-    for number, layer in enumerate(placement.layers, 1):
-        row = _row_of(section, scale, layer.bottom, max(layer.diameters), at_bottom)
+    rows = _layer_rows(section, scale, placement, at_bottom)
+    for number, (layer, row) in enumerate(zip(placement.layers, rows, strict=True), 1):
         counts: dict[str, int] = {}
         for size in layer.designations:
             counts[size] = counts.get(size, 0) + 1

@@ -7,6 +7,59 @@ import tempfile
 from pathlib import Path
 
 from optimizer.errors import OutputError
+from optimizer.job_messages import short
+
+
+def check_target(path: Path, *, replace: bool = True, sources: tuple[Path, ...] = ()) -> Path:
+    """See, before any work is done, whether a file can be written.
+
+    Parameters
+    ----------
+    path : Path
+        File to write.
+    replace : bool
+        Whether an existing file may be replaced.
+    sources : tuple of Path
+        Files that must not be overwritten: what the result is made from.
+
+    Returns
+    -------
+    Path
+        The file itself, links followed.
+
+    Raises
+    ------
+    OutputError
+        If the place is no place for a file.
+    """
+    shown = short(str(path))
+    try:
+        target = path.resolve()
+        exists = target.exists()
+        if target.is_dir():
+            msg = f"{shown}: is a folder; expected a file name"
+            raise OutputError(msg)
+        if exists and not target.is_file():
+            msg = f"{shown}: is no ordinary file; expected a file name"
+            raise OutputError(msg)
+        if exists and not replace:
+            msg = f"{shown}: exists already; allowed: a new file; hint: choose another name"
+            raise OutputError(msg)
+        if exists and any(target == source.resolve() for source in sources):
+            msg = f"{shown}: is what the result is made from; hint: choose another name"
+            raise OutputError(msg)
+        if not target.parent.is_dir():
+            msg = f"{shown}: its folder does not exist; hint: make the folder first"
+            raise OutputError(msg)
+        if not os.access(target.parent, os.W_OK):
+            msg = f"{shown}: its folder cannot be written to"
+            raise OutputError(msg)
+    except (OSError, ValueError) as error:
+        if isinstance(error, OutputError):
+            raise
+        msg = f"{shown}: cannot be written: {_reason(error)}"
+        raise OutputError(msg) from None
+    return target
 
 
 def write_text(path: Path, text: str, *, replace: bool = True) -> None:
@@ -26,24 +79,31 @@ def write_text(path: Path, text: str, *, replace: bool = True) -> None:
     OutputError
         If the file exists and must not be replaced, or cannot be written.
     """
-    if path.exists() and not replace:
-        msg = f"{path}: exists already; allowed: a new file; hint: choose another name"
-        raise OutputError(msg)
-    if path.is_dir():
-        msg = f"{path}: is a folder; expected a file name"
-        raise OutputError(msg)
+    target = check_target(path, replace=replace)
     try:
-        handle, name = tempfile.mkstemp(dir=path.parent, prefix=f".{path.name}.")
+        mode = target.stat().st_mode & 0o777 if target.exists() else 0o666 & ~_umask()
+        handle, name = tempfile.mkstemp(dir=target.parent, prefix=".cagewright-")
         temporary = Path(name)
         try:
             with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as file:
                 file.write(text)
-            temporary.chmod(0o644)
-            temporary.replace(path)
+            temporary.chmod(mode)
+            temporary.replace(target)
         except BaseException:
             temporary.unlink(missing_ok=True)
             raise
     except (OSError, ValueError) as error:
-        reason = error.strerror if isinstance(error, OSError) and error.strerror else str(error)
-        msg = f"{path}: cannot be written: {reason}"
+        msg = f"{short(str(path))}: cannot be written: {_reason(error)}"
         raise OutputError(msg) from None
+
+
+def _reason(error: Exception) -> str:
+    reason = error.strerror if isinstance(error, OSError) and error.strerror else str(error)
+    return short(reason)
+
+
+def _umask() -> int:
+    """Permissions that the user does not want new files to have; only settable, so set back."""
+    mask = os.umask(0)
+    os.umask(mask)
+    return mask

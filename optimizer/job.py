@@ -21,11 +21,12 @@ from engine import (
 from engine.units import SYSTEMS
 from optimizer.errors import JobError
 from optimizer.job_keys import JobKeys
-from optimizer.job_messages import first_error, short
+from optimizer.job_messages import first_error, quoted, short
 from optimizer.job_sections import SectionReader
 from optimizer.problem import Problem
 
-_LARGEST_FILE = 5_000_000
+_LARGEST_FILE = 2_000_000
+_MOST_DOTS = 100  # in a line: dotted keys nest, and nesting is read in quadratic time
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -66,7 +67,7 @@ def read_job(path: str | Path) -> Job:
         If the file cannot be read or anything in it cannot be used.
     """
     path = Path(path)
-    return parse_job(_text_of(path), name=path.name, base=path.parent)
+    return parse_job(_text_of(path), name=short(path.name), base=path.parent)
 
 
 def parse_job(text: str, *, name: str = "job", base: Path | None = None) -> Job:
@@ -91,6 +92,10 @@ def parse_job(text: str, *, name: str = "job", base: Path | None = None) -> Job:
     JobError
         If anything in it cannot be used.
     """
+    for number, line in enumerate(text.splitlines(), 1):
+        if line.count(".") > _MOST_DOTS and not line.lstrip().startswith("#"):
+            msg = f"{name}: line {number}: nested too deeply; allowed: the keys of a job"
+            raise JobError(msg)
     try:
         data = tomllib.loads(text)
     except RecursionError:
@@ -104,7 +109,7 @@ def parse_job(text: str, *, name: str = "job", base: Path | None = None) -> Job:
     try:
         keys = JobKeys.model_validate(data, context={"system": edition.system})
     except ValidationError as error:
-        raise JobError(first_error(error, data, name)) from None
+        raise JobError(first_error(error, JobKeys, data, name)) from None
     except RecursionError:
         msg = f"{name}: nested too deeply; allowed: the keys of a job, two levels deep"
         raise JobError(msg) from None
@@ -112,7 +117,7 @@ def parse_job(text: str, *, name: str = "job", base: Path | None = None) -> Job:
     problems = []
     for number, section in enumerate(keys.section, 1):
         where = f'{name}: section {number} "{short(section.mark)}"'
-        if not section.mark.isprintable():
+        if not section.mark.isprintable() or not section.mark.strip():
             msg = f"{name}: section {number}, mark: got {section.mark!r}; allowed: printable text"
             raise JobError(msg)
         if section.mark in marks:
@@ -128,16 +133,18 @@ def parse_job(text: str, *, name: str = "job", base: Path | None = None) -> Job:
 
 def _text_of(path: Path) -> str:
     try:
+        shown = short(str(path))
         if not path.is_file():
-            what = "is a folder" if path.is_dir() else "does not exist"
-            msg = f"{path}: {what}; expected a job file; hint: cagewright new FILE writes one"
+            what = "is a folder" if path.is_dir() else "is no file"
+            what = what if path.exists() else "does not exist"
+            msg = f"{shown}: {what}; expected a job file; hint: cagewright new FILE writes one"
             raise JobError(msg)
         if path.stat().st_size > _LARGEST_FILE:
-            msg = f"{path}: {path.stat().st_size} bytes; allowed: up to {_LARGEST_FILE} bytes"
+            msg = f"{shown}: {path.stat().st_size} bytes; allowed: up to {_LARGEST_FILE} bytes"
             raise JobError(msg)
         return path.read_bytes().decode("utf-8-sig")
     except UnicodeDecodeError:
-        msg = f"{path}: not a text file in UTF-8; expected a job file in TOML"
+        msg = f"{short(str(path))}: not a text file in UTF-8; expected a job file in TOML"
         raise JobError(msg) from None
     except (OSError, ValueError) as error:
         if isinstance(error, JobError):
@@ -154,14 +161,14 @@ def _edition(data: Mapping[str, Any], name: str) -> Edition:
         msg = f'{name}: code: missing; expected one of {allowed}, as in code = "ACI 318-19"'
         raise JobError(msg)
     if not isinstance(code, str) or code not in EDITIONS:
-        near = difflib.get_close_matches(str(code)[:40], EDITIONS, n=1)
+        near = difflib.get_close_matches(quoted(code)[:40], EDITIONS, n=1)
         hint = f"; hint: did you mean {near[0]}?" if near else ""
-        msg = f"{name}: code: got {short(repr(code))}; allowed: {allowed}{hint}"
+        msg = f"{name}: code: got {short(quoted(code))}; allowed: {allowed}{hint}"
         raise JobError(msg)
     edition = EDITIONS[code]
     units = data.get("units", edition.units)
-    if units not in SYSTEMS:
-        msg = f"{name}: units: got {short(repr(units))}; allowed: us, si"
+    if not isinstance(units, str) or units not in SYSTEMS:
+        msg = f"{name}: units: got {short(quoted(units))}; allowed: us, si"
         raise JobError(msg)
     if units != edition.units:
         twin = code.replace("318-", "318M-") if units == "si" else code.replace("318M-", "318-")

@@ -13,6 +13,7 @@ from pydantic import BaseModel, BeforeValidator, ConfigDict, Field, StrictBool, 
 from engine import parse_quantity
 from engine.errors import QuantityError
 from engine.units import UnitSystem, plain
+from optimizer.job_messages import quoted
 
 MOST_SECTIONS = 2000
 MOST_KEPT = 200
@@ -35,7 +36,7 @@ def _quantity(
         least = parse_quantity(low, kind, system, unit)
         most = parse_quantity(high, kind, system, unit)
         if not least <= abs(size) <= most or (size < 0 and kind != "moment"):
-            msg = f"got {value!r}; allowed: {plain(low)} to {plain(high)} {unit}"
+            msg = f"got {quoted(value)}; allowed: {plain(low)} to {plain(high)} {unit}"
             if kind == "moment":
                 msg += " in size, + sagging, - hogging"
             raise QuantityError(msg)
@@ -68,6 +69,7 @@ ConcreteStrength = Annotated[float, _quantity("stress", (500, 20e3, "psi"), (3, 
 YieldStrength = Annotated[float, _quantity("stress", (20e3, 150e3, "psi"), (100, 1000, "MPa"))]
 Modulus = Annotated[float, _quantity("stress", (5e5, 12e6, "psi"), (4000, 80e3, "MPa"))]
 Constant = Annotated[float, Field(ge=0, le=1000, allow_inf_nan=False, strict=True)]
+Lightweight = Annotated[float, Field(ge=0.75, le=1.0, allow_inf_nan=False, strict=True)]
 Name = Annotated[str, Field(min_length=1, max_length=60, strict=True)]
 Layers = Annotated[list[Annotated[str, Field(strict=True, max_length=200)]], Field(min_length=1)]
 
@@ -83,9 +85,9 @@ class MaterialKeys(_Keys):
     steel: Name | None = None
     fy: YieldStrength | None = None
     aggregate: Aggregate | None = None
-    lightweight: Annotated[float, Field(strict=True, ge=0.75, le=1.0)] | None = Field(
-        default=None, alias="lambda"
-    )
+    lightweight: (
+        Annotated[float, Field(strict=True, ge=0.75, le=1.0, allow_inf_nan=False)] | None
+    ) = Field(default=None, alias="lambda")
     Ec: Modulus | None = None
 
 

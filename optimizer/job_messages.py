@@ -6,10 +6,8 @@ import difflib
 from collections.abc import Mapping
 from typing import Any
 
-from pydantic import ValidationError
+from pydantic import BaseModel, ValidationError
 from pydantic_core import ErrorDetails
-
-from optimizer.job_keys import JobKeys
 
 _LONGEST = 160
 
@@ -31,7 +29,32 @@ def short(text: str) -> str:
     return clean if len(clean) <= _LONGEST else clean[:_LONGEST] + "..."
 
 
-def first_error(error: ValidationError, data: Mapping[str, Any], name: str) -> str:
+def quoted(value: object) -> str:
+    """Write a value of a job file the way the file would.
+
+    Parameters
+    ----------
+    value : object
+        Value as TOML gives it.
+
+    Returns
+    -------
+    str
+        Its text.
+    """
+    if isinstance(value, bool):
+        return str(value).lower()
+    if isinstance(value, str | int | float | list | dict):
+        try:
+            return repr(value)
+        except (ValueError, RecursionError):  # a whole number too long to print
+            return "a number of absurd length"
+    return str(value)  # dates and times
+
+
+def first_error(
+    error: ValidationError, model: type[BaseModel], data: Mapping[str, Any], name: str
+) -> str:
     """Turn the first fault of a file into one message."""
     errors = error.errors(include_url=False)
     # A misspelt key is also a missing one: the misspelling explains it.
@@ -39,7 +62,7 @@ def first_error(error: ValidationError, data: Mapping[str, Any], name: str) -> s
     where, key = _place(first, data)
     kind, given = first["type"], first["input"]
     if kind == "extra_forbidden":
-        known = _known_keys(first)
+        known = _known_keys(first, model)
         near = difflib.get_close_matches(key.rpartition(".")[2], known, n=1)
         hint = f"hint: did you mean {near[0]}?" if near else f"allowed: {', '.join(known)}"
         text = f"unknown key; {hint}"
@@ -48,7 +71,7 @@ def first_error(error: ValidationError, data: Mapping[str, Any], name: str) -> s
     elif kind == "value_error":
         text = str(first["ctx"]["error"])
     else:
-        text = f"got {short(repr(given))}; {_expected(first)}"
+        text = f"got {short(quoted(given))}; {_expected(first)}"
     more = f" (and {len(errors) - 1} more)" if len(errors) > 1 else ""
     place = f"{name}: {where}, {key}" if where else f"{name}: {key}"
     return f"{place}: {text}{more}"
@@ -62,7 +85,12 @@ def _expected(error: ErrorDetails) -> str:
     if kind == "list_type":
         table = error["loc"] == ("section",)
         return "expected [[section]] tables" if table else "expected a list in square brackets"
-    return error["msg"].replace("Input should be", "expected").replace("String", "text")
+    if kind == "too_short":
+        return "expected at least one entry"
+    if kind == "finite_number":
+        return "expected a finite number"
+    words = error["msg"].replace("Input should be", "expected").replace("String", "text")
+    return words.replace("a valid string", "a text in quotes").replace("valid ", "")
 
 
 def _place(error: ErrorDetails, data: Mapping[str, Any]) -> tuple[str, str]:
@@ -77,12 +105,11 @@ def _place(error: ErrorDetails, data: Mapping[str, Any]) -> tuple[str, str]:
             if isinstance(mark, str):
                 where += f' "{short(mark)}"'
         location = location[2:]
-    key = ".".join(short(str(part)) for part in location) or "section"
+    key = ".".join(short(str(part)) or '""' for part in location) or "section"
     return where, key
 
 
-def _known_keys(error: ErrorDetails) -> list[str]:
-    model: Any = JobKeys
+def _known_keys(error: ErrorDetails, model: Any) -> list[str]:
     for part in error["loc"][:-1]:
         if isinstance(part, int):
             continue

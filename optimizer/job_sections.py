@@ -19,12 +19,11 @@ from engine import (
     Section,
     Slab,
     Steel,
-    effective_flange_width,
     parse_layout,
 )
-from engine.flange_width import overhang
 from engine.units import plain
 from optimizer.errors import JobError
+from optimizer.flanges import slab_flange
 from optimizer.job_keys import FlangeKeys, JobKeys, SectionKeys
 from optimizer.job_messages import short
 from optimizer.problem import MM_PER_IN, SI_MASS_FACTOR, BarRules, Problem, Ranking
@@ -44,7 +43,7 @@ _MASS_CONSTANTS = {
     "tight_gap": 0.10,
 }
 _KEY_NAMES = {"lightweight": "lambda"}
-_KEEP, _PER_PATTERN, _WORK_LIMIT = 10, 3, 60.0
+_KEEP, _PER_PATTERN, _WORK_LIMIT = 10, 3, 3.0
 
 
 class SectionReader:
@@ -101,6 +100,7 @@ class SectionReader:
             rules=self._rules(catalog),
             ranking=self._ranking(section.aggregate),
             drawn=drawn,
+            slab=self._slab(),
         )
 
     def _catalog(self) -> BarCatalog:
@@ -167,9 +167,10 @@ class SectionReader:
             top = self._flange(keys.flange)
         if keys.bottom_flange is not None:
             bottom = self._flange(keys.bottom_flange)
-        if keys.slab is not None:
+        slab = self._slab()
+        if slab is not None:
             with self._key("slab"):
-                top = self._slab_flange(Slab(**keys.slab.model_dump()))
+                top = slab_flange(slab, keys.width)
         with self._key("flange"):
             return Outline(web=keys.width, depth=keys.depth, top=top, bottom=bottom)
 
@@ -178,13 +179,11 @@ class SectionReader:
         left = {"both": beyond / 2, "left": beyond, "right": 0.0}[given.side]
         return Flange(width=given.width, thickness=given.thickness, left=left)
 
-    def _slab_flange(self, slab: Slab) -> Flange:
-        both = slab.clear_left > 0.0 and slab.clear_right > 0.0
-        return Flange(
-            width=effective_flange_width(slab, self.keys.width),
-            thickness=slab.thickness,
-            left=overhang(slab, slab.clear_left, both_sides=both),
-        )
+    def _slab(self) -> Slab | None:
+        if self.keys.slab is None:
+            return None
+        with self._key("slab"):
+            return Slab(**self.keys.slab.model_dump())
 
     def _section(self, catalog: BarCatalog) -> Section:
         keys, bars = self.keys, self.job.bars

@@ -20,13 +20,15 @@ CAUTION = (
 )
 
 
-def to_json(result: RankResult | CheckResult) -> str:
+def to_json(result: RankResult | CheckResult, *, ascii_only: bool = False) -> str:
     """Write a result as JSON text.
 
     Parameters
     ----------
     result : RankResult or CheckResult
         Result of a job.
+    ascii_only : bool
+        Whether other characters are escaped.
 
     Returns
     -------
@@ -34,7 +36,7 @@ def to_json(result: RankResult | CheckResult) -> str:
         One object; equal results give equal text.
     """
     data = _ranked(result) if isinstance(result, RankResult) else _checked(result)
-    return json.dumps(data, ensure_ascii=False, indent=1, allow_nan=False) + "\n"
+    return json.dumps(data, ensure_ascii=ascii_only, indent=1, allow_nan=False) + "\n"
 
 
 def _head(result: RankResult | CheckResult, kind: str) -> dict[str, Any]:

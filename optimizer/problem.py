@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from catalogs import Bar
-from engine import Layout, Section
+from engine import Layout, Section, Slab
 
 MM_PER_IN = 25.4
 SI_MASS_FACTOR = 1.488
@@ -53,7 +53,8 @@ class Ranking:
     preferred_gap : float
         Clear gap from which on a layer is not tight. [in or mm]
     work_limit : float
-        Deterministic work the solver may spend on a section, about seconds. [-]
+        Work the solver may spend on a section, in its own deterministic measure; a unit takes
+        some seconds. [-]
     """
 
     by: str
@@ -82,9 +83,12 @@ class Problem:
         Order wanted.
     drawn : Layout or None
         Layout given in the job, for the check.
+    slab : Slab or None
+        Slab that the top flange follows from, if it was not given by its size.
     """
 
     section: Section
     rules: BarRules
     ranking: Ranking
     drawn: Layout | None = None
+    slab: Slab | None = None

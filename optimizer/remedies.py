@@ -19,6 +19,7 @@ from engine import (
 from engine.cover import required_cover
 from engine.units import plain
 from optimizer.candidates import Candidate
+from optimizer.flanges import slab_flange
 from optimizer.problem import MM_PER_IN, BarRules, Problem
 from optimizer.search import Search
 
@@ -121,7 +122,7 @@ def _changes(problem: Problem) -> Iterator[tuple[str, str, list[_Option]]]:
         [
             (
                 length(outline.web + n * step),
-                in_section(outline=_resized(outline, n * step, 0.0)),
+                _resized(problem, n * step, 0.0),
             )
             for n in range(1, _WIDTH_STEPS + 1)
         ],
@@ -133,14 +134,16 @@ def _changes(problem: Problem) -> Iterator[tuple[str, str, list[_Option]]]:
         [
             (
                 length(outline.depth + n * step),
-                in_section(outline=_resized(outline, 0.0, n * step)),
+                _resized(problem, 0.0, n * step),
             )
             for n in range(1, _DEPTH_STEPS + 1)
         ],
     )
-    needed = required_cover(edition, section.exposure, rules.sizes[-1].diameter)
-    if needed > section.cover:
-        yield "cover", length(section.cover), [(length(needed), in_section(cover=needed))]
+    yield (
+        "cover",
+        length(section.cover),
+        [(length(cover), in_section(cover=cover)) for cover in _larger_covers(problem)],
+    )
     yield (
         "stirrup",
         section.stirrup.designation,
@@ -186,18 +189,40 @@ def _changes(problem: Problem) -> Iterator[tuple[str, str, list[_Option]]]:
     )
 
 
-def _resized(outline: Outline, wider: float, deeper: float) -> Outline:
-    """A web that grows with its overhangs unchanged."""
+def _larger_covers(problem: Problem) -> list[float]:
+    """Covers that the table asks for with one size or another, above the present one."""
+    section, sizes = problem.section, problem.rules.sizes
+    edition, exposure, stirrup = section.edition, section.exposure, section.stirrup.diameter
+    least = required_cover(edition, exposure, stirrup)
+    covers = {
+        max(least, required_cover(edition, exposure, bar.diameter) - stirrup) for bar in sizes
+    }
+    return sorted(cover for cover in covers if cover > section.cover)
 
-    def grown(flange: Flange | None) -> Flange | None:
-        return None if flange is None else replace(flange, width=flange.width + wider)
 
-    return Outline(
-        web=outline.web + wider,
-        depth=outline.depth + deeper,
-        top=grown(outline.top),
-        bottom=grown(outline.bottom),
-    )
+def _resized(problem: Problem, wider: float, deeper: float) -> Callable[[], Problem]:
+    """Another web, as the job's keys would give it: a flange given by its size stays as it is,
+    one that follows from the slab follows the web.
+    """
+
+    def build() -> Problem:
+        outline = problem.section.outline
+        web = outline.web + wider
+
+        def kept(flange: Flange | None) -> Flange | None:
+            if flange is None:
+                return None
+            beyond = flange.width - outline.web
+            share = 0.5 if flange.left is None or not beyond else flange.left / beyond
+            return replace(flange, left=max(0.0, flange.width - web) * share)
+
+        top = kept(outline.top) if problem.slab is None else slab_flange(problem.slab, web)
+        changed = Outline(
+            web=web, depth=outline.depth + deeper, top=top, bottom=kept(outline.bottom)
+        )
+        return replace(problem, section=replace(problem.section, outline=changed))
+
+    return build
 
 
 def _stronger_concrete(problem: Problem, fc: float) -> Callable[[], Problem]:

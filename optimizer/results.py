@@ -246,6 +246,6 @@ def check(job: Job) -> CheckResult:
         )
         sections.append(CheckedSection(problem=problem, layout=rated))
     if not sections:
-        msg = 'layers: missing; expected in a section, as in layers = ["4 #8", "2 #8"]'
+        msg = 'job: layers: missing; expected in a section, as in layers = ["4 #8", "2 #8"]'
         raise JobError(msg)
     return CheckResult(job=job, sections=tuple(sections))

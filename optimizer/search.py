@@ -11,6 +11,7 @@ are done, nothing left out is better than the last line shown.
 from __future__ import annotations
 
 import math
+from bisect import insort
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 
@@ -20,7 +21,7 @@ from numpy.typing import NDArray
 from engine import Batch, Layout, assess, place
 from engine.assessment import ROUNDING, service_stress
 from engine.crack_control import largest_spacing
-from engine.detailing_checks import opposite_bars
+from engine.detailing_checks import section_rows
 from engine.layouts import Layer
 from engine.outlines import FloatArray
 from optimizer.candidates import Candidate, short_list
@@ -59,22 +60,30 @@ class Found:
 
 
 class _Pool:
-    """Candidates found so far, and what a further one has to beat."""
+    """Candidates found so far in their order, and what a further one has to beat."""
 
     def __init__(self, ranking: Ranking) -> None:
         self.ranking = ranking
         self.candidates: dict[Layout, Candidate] = {}
+        self.least_mass = math.inf
+        self.fewest_bars = math.inf
+        self._ordered: list[Candidate] = []
         self._chosen: list[Candidate] | None = []
 
     def add(self, candidate: Candidate) -> None:
+        """Take a layout in."""
+        by = self.ranking.by
         self.candidates[candidate.layout] = candidate
+        self.least_mass = min(self.least_mass, candidate.mass + _VALUE_SLACK)
+        self.fewest_bars = min(self.fewest_bars, candidate.bars)
+        insort(self._ordered, candidate, key=lambda item: item.key(by))
         self._chosen = None
 
     @property
     def chosen(self) -> list[Candidate]:
         """The short list of what has been found."""
         if self._chosen is None:
-            self._chosen = short_list(self.candidates.values(), self.ranking)
+            self._chosen = short_list(self._ordered, self.ranking)
         return self._chosen
 
     def limit(self, pattern: tuple[int, int]) -> float:
@@ -88,16 +97,6 @@ class _Pool:
             if len(same) >= self.ranking.per_pattern:
                 limit = min(limit, same[-1].value(by))
         return limit + _VALUE_SLACK
-
-    @property
-    def least_mass(self) -> float:
-        """Mass of the lightest so far."""
-        return min((i.mass for i in self.candidates.values()), default=math.inf) + _VALUE_SLACK
-
-    @property
-    def fewest_bars(self) -> float:
-        """Number of bars of the layout with the fewest so far."""
-        return min((item.bars for item in self.candidates.values()), default=math.inf)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -206,7 +205,7 @@ class Search:
             The short list and whether it is proved.
         """
         section, ranking = self.problem.section, self.problem.ranking
-        if not opposite_bars(section).ok:
+        if any(not row.ok for row in section_rows(section)):
             return Found(chosen=(), lightest=None, fewest=None, proved=True)
         members = families(envelope(section), self.problem.rules)
         prospects = [_prospect(family, ranking) for family in members]

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 import textwrap
 
+from rich.cells import cell_len
 from rich.console import Console
 from rich.table import Table
 from rich.text import Text
@@ -70,7 +71,7 @@ class View:
         """Print what a section is and what is asked of it."""
         width = min(self.console.width, 80)
         name = f" {section.mark} "
-        self.say(f"{self.rule * 2}{name}{self.rule * max(2, width - len(name) - 2)}", "bold")
+        self.say(f"{self.rule * 2}{name}{self.rule * max(0, width - cell_len(name) - 2)}", "bold")
         system = section.edition.system
         steel = section.steel.name or "steel"
         unit = system.trade["stress"]
@@ -92,7 +93,7 @@ class View:
         """Print the short list of a section and one check, or the diagnosis."""
         self.heading(result.section)
         if result.diagnosis is not None:
-            self._diagnosis(result.section, result.diagnosis)
+            self._diagnosis(result.section, result.diagnosis, proved=result.proved)
             return
         system = result.section.edition.system
         mass, moment = system.trade["mass_per_length"], system.trade["moment"]
@@ -120,6 +121,10 @@ class View:
     def _table(self) -> Table:
         return Table(box=None, padding=(0, 0, 0, 1), pad_edge=False, header_style="underline")
 
+    def _row_of(self, table: Table, *cells: str) -> None:
+        """Add a row whose texts are shown as they are, whatever mark-up they look like."""
+        table.add_row(*(Text(cell) for cell in cells))
+
     def _short_list(self, result: RankedSection) -> Table:
         system = result.section.edition.system
         table = self._table()
@@ -130,9 +135,10 @@ class View:
         for rated in result.layouts:
             checked = rated.checked
             tightest = min(layer.gap / layer.gap_required for layer in checked.placement.layers)
-            table.add_row(
+            self._row_of(
+                table,
                 "+" if rated.rank is None else str(rated.rank),
-                "\n".join(layer.label for layer in checked.layout.layers),
+                "\n".join(layer.label.replace(" + ", "+") for layer in checked.layout.layers),
                 _fixed(checked.layout.mass, 5),
                 _fixed(rated.score.total, 5),
                 *(_fixed(getattr(rated.score, term), 4) for term in TERMS),
@@ -210,14 +216,22 @@ class View:
             verdict += f": {', '.join(failing)}"
         self.checked(result.layout, f"{result.layout.checked.layout.label}  {verdict}")
 
-    def _diagnosis(self, section: Section, diagnosis: Diagnosis) -> None:
+    def _diagnosis(self, section: Section, diagnosis: Diagnosis, *, proved: bool) -> None:
         system = section.edition.system
         unit = system.trade["moment"]
-        self.say("No layout meets every rule.", "bold")
+        if proved:
+            self.say("No layout meets every rule.", "bold")
+        else:
+            self.say(
+                "No layout found, and NOT PROVED that there is none: the work limit stopped the"
+                " search. Raise work_limit.",
+                "bold",
+            )
         blocked = ", ".join(
             f"{block.id} ({block.families} of {block.of})" for block in diagnosis.blocked_by
         )
-        self.say(f"What blocks, in how many families of layouts: {blocked}")
+        if blocked:
+            self.say(f"What blocks, in how many families of layouts: {blocked}")
         strongest = diagnosis.strongest
         if strongest is None:
             self.say("No layout meets the rules other than strength either.")
@@ -240,7 +254,8 @@ class View:
         for name in (mass, f"phi Mn {unit}"):
             table.add_column(name, justify="right", no_wrap=True)
         for remedy in diagnosis.remedies:
-            table.add_row(
+            self._row_of(
+                table,
                 remedy.key,
                 remedy.before,
                 remedy.after,
@@ -260,7 +275,8 @@ class View:
         for name in (f"db [{length}]", f"Ab [{length}^2]", f"mass [{mass}]", "relative labour"):
             table.add_column(name, justify="right", no_wrap=True, min_width=9)
         for bar in catalog.bars:
-            table.add_row(
+            self._row_of(
+                table,
                 bar.designation,
                 f"{bar.diameter:g}",
                 f"{bar.area:g}",

@@ -212,14 +212,7 @@ OF_ANY_UNIT = {
 }
 
 
-UNITLESS = pytest.mark.xfail(strict=True, reason="the docstring gives no unit of what is returned")
-NAMES = [
-    pytest.param(name, marks=[UNITLESS] if name == "engine/placement.py: stack" else [])
-    for name in sorted(FUNCTIONS.keys() - OF_ANY_UNIT)
-]
-
-
-@pytest.mark.parametrize("name", NAMES)
+@pytest.mark.parametrize("name", sorted(FUNCTIONS.keys() - OF_ANY_UNIT))
 def test_numbers_have_units(name: str) -> None:
     """Every float of a signature has its unit in square brackets; so has a float returned."""
     node = FUNCTIONS[name]

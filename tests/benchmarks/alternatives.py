@@ -8,7 +8,7 @@ from itertools import product
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.optimize import differential_evolution
+from scipy.optimize import Bounds, differential_evolution
 
 from engine import Batch, assess, place
 from engine.assessment import ROUNDING, service_stress
@@ -126,7 +126,11 @@ def evolve(problem: Problem) -> Outcome:
         value = _value(problem, family, counts[0], float(s[0]))
         return 1e4 if value is None else value
 
-    bounds = [(0.0, len(members) - 1e-9), *([(0.0, 1.0)] * (2 * layers))]
-    result = differential_evolution(cost, bounds, seed=1, maxiter=60, popsize=12, polish=False)
+    low = np.zeros(1 + 2 * layers)
+    high = np.ones(1 + 2 * layers)
+    high[0] = len(members) - 1e-9
+    result = differential_evolution(
+        cost, Bounds(low, high), rng=1, maxiter=60, popsize=12, polish=False
+    )
     best = float(result.fun)
     return Outcome(time.perf_counter() - start, best if best < 1e4 else None)

@@ -50,7 +50,7 @@ def test_metric_only_grades(name: str, fy_mpa: float, fu_mpa: float) -> None:
     assert "authority having jurisdiction" in grade.note
     with pytest.raises(
         UnknownNameError,
-        match=f"'{name}' is not listed in system 'us'; allowed: si\nhint: give fy instead",
+        match=f"'{name}' is not listed in system 'us'; allowed: si; hint: give fy instead",
     ) as caught:
         grade.yield_strength("us")
     assert caught.value.allowed == ("si",)

@@ -122,7 +122,7 @@ def test_file_beyond_the_limit_is_refused_unread(
         file.truncate(2**33)
     outcome = _rank(capsys, path)
     assert_refused(outcome, "job\\.toml")
-    assert "5000000 bytes" in outcome.err
+    assert "2000000 bytes" in outcome.err
 
 
 @pytest.mark.parametrize("name", ["absent.toml", ".", "a" * 300, "a\x1b[31m.toml", ""])

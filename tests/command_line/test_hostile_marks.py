@@ -92,7 +92,7 @@ def test_unknown_only_mark_cannot_reach_the_terminal(
     assert "\x1b" not in outcome.err
 
 
-@pytest.mark.parametrize("size", ["[b]8", "[/]", "=8", "8&9", "№8"])
+@pytest.mark.parametrize("size", ["[b]8", "=8", "8&9", "№8"])
 def test_designations_of_a_table_are_shown_literally(
     size: str, tmp_path: Path, monkeypatch: pytest.MonkeyPatch, capsys: pytest.CaptureFixture[str]
 ) -> None:

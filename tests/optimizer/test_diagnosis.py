@@ -67,9 +67,6 @@ def test_strongest_equals_brute_force(first: int) -> None:
     assert fitting > 0
 
 
-@pytest.mark.xfail(
-    strict=True, reason="layer 1 is held to the spacing of 2/3 fy though a service moment is given"
-)
 def test_strongest_under_a_service_moment() -> None:
     """Crack control by a low Ms permits two bars in layer 1 where 2/3 fy asks for three.
 
@@ -118,17 +115,11 @@ def test_opposite_bars_that_do_not_fit_block() -> None:
     assert "width" in {remedy.key for remedy in result.diagnosis.remedies}
 
 
-@pytest.mark.xfail(
-    strict=True, reason="a layout is shown as meeting every other rule with bars that do not fit"
-)
 def test_no_strongest_beside_opposite_bars_that_do_not_fit() -> None:
     """No layout of this face meets every rule but strength where the other face fails."""
     assert diagnose(opposite_too_wide()).strongest is None
 
 
-@pytest.mark.xfail(
-    strict=True, reason="the search leaves the tie rule to the check, which stops with a defect"
-)
 @pytest.mark.parametrize(
     ("units", "section"),
     [
@@ -145,11 +136,6 @@ def test_ties_too_thin_for_counted_bars(units: str, section: Keys) -> None:
     assert [block.id for block in result.diagnosis.blocked_by] == ["compression_ties"]
 
 
-@pytest.mark.xfail(
-    strict=True,
-    raises=pytest.fail.Exception,
-    reason="the strongest layout is looked for without end where the work limit stops each solve",
-)
 def test_diagnosis_ends_under_a_tiny_work_limit(monkeypatch: pytest.MonkeyPatch) -> None:
     """A work limit that stops every solve ends the diagnosis too, not only the search."""
     solves = 0

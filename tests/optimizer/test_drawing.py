@@ -152,7 +152,6 @@ def test_lines_fit_the_page(layers: tuple[str, ...], changes: dict[str, Any]) ->
     assert page_width(us_section(**changes), *layers) <= PAGE
 
 
-@pytest.mark.xfail(strict=True, reason="lines of wide webs, wide flanges and captions pass 80")
 @pytest.mark.parametrize(
     ("layers", "outline"),
     [
@@ -177,7 +176,6 @@ def test_lines_of_wide_sections_fit_the_page(layers: tuple[str, ...], outline: O
     assert page_width(us_section(outline=outline), *layers) <= PAGE
 
 
-@pytest.mark.xfail(strict=True, reason="two layers of a wide, shallow web share one row")
 def test_layers_of_a_wide_web_keep_their_rows() -> None:
     """Each layer has a row and a note of its own however wide the web is."""
     checked = drawn("12 #5", "4 #5", outline=Outline(web=72.0, depth=24.0))

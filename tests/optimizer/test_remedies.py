@@ -132,9 +132,6 @@ def test_every_kind_of_remedy_occurs(results: dict[str, RankedSection]) -> None:
     }  # fmt: skip
 
 
-@pytest.mark.xfail(
-    strict=True, reason="the cover of the main bars is asked of the stirrup: 3/8 in too much"
-)
 def test_cover_remedy_is_the_smallest() -> None:
     """Weather, #8 bars in #3 stirrups: 2 in to the bars (Table 20.5.1.3.1) is 1.625 in outside."""
     keys = {"exposure": '"weather"', "stirrup": '"#3"', "sizes": '["#8"]'}
@@ -144,9 +141,6 @@ def test_cover_remedy_is_the_smallest() -> None:
     assert {remedy.after for remedy in diagnosis.remedies if remedy.key == "cover"} == {"1.625 in"}
 
 
-@pytest.mark.xfail(
-    strict=True, reason="the remedy widens the flange with the web; the job's key does not"
-)
 def test_width_remedy_of_a_section_with_a_given_flange() -> None:
     """The width that a remedy names gives a layout in the job with just this key changed."""
     keys = {"Mu": "250", "width": "10", "depth": "20", "flange": "{width = 12, thickness = 4}"}

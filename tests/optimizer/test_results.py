@@ -169,7 +169,7 @@ def test_check_of_drawn_layouts() -> None:
 
 def test_check_without_layers() -> None:
     """A job that gives no layout cannot be checked, and says which key is missing."""
-    with pytest.raises(JobError, match=r"^layers: missing"):
+    with pytest.raises(JobError, match=r"^job: layers: missing"):
         check(parse_job(job_text()))
 
 

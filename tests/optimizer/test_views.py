@@ -87,9 +87,6 @@ def test_stopped_search_is_said_plainly() -> None:
     assert "Proved:" not in text
 
 
-@pytest.mark.xfail(
-    strict=True, reason="the diagnosis is printed without a word about the stopped search"
-)
 def test_stopped_search_without_a_find_does_not_claim_that_there_is_none() -> None:
     """Nothing found before the work limit is not the same as nothing there."""
     problem = _random_twin(126).problem

@@ -243,4 +243,4 @@ def subsets(tests: Sequence[FlexuralTest]) -> dict[str, list[FlexuralTest]]:
 
 
 if __name__ == "__main__":
-    print("\n".join(lines(read_tests())))  # noqa: T201 - run to be read
+    print("\n".join(lines(read_tests())))
