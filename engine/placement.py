@@ -7,10 +7,11 @@ and, of the symmetric choices, on those that leave the largest smallest gap.
 
 from __future__ import annotations
 
+from bisect import bisect_left
 from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import lru_cache
-from itertools import pairwise
+from itertools import combinations, pairwise
 
 from engine.layouts import Layer, Layout
 from engine.sections import Section
@@ -253,31 +254,34 @@ def stack(lines: tuple[float, ...], diameters: tuple[float, ...]) -> tuple[float
     if pairs == 0:
         return (0.0,)
     half = lines[: len(lines) // 2]  # left half, the outermost first
-    best: tuple[float, list[int]] = (float("-inf"), [])
+    widths = [(left + right) / 2 for left, right in pairwise(diameters[:pairs])]
+    # The innermost bar closes with its mirror image, or with the bar at the centre.
+    reach, last = (1.0, (diameters[pairs - 1] + diameters[pairs]) / 2) if centred else (2.0, 0.0)
+    closing = last if centred else diameters[pairs - 1]
 
-    def closing_gap(last: int) -> float:
-        """Gap between the innermost pair, or between it and the bar at the centre."""
-        if centred:
-            return -half[last] - (diameters[pairs - 1] + diameters[pairs]) / 2
-        return -2 * half[last] - diameters[pairs - 1]
+    def outermost(least: float) -> list[int] | None:
+        """Lines nearest the corners that leave gaps of at least a value, if any do.
 
-    def extend(chosen: list[int], smallest: float) -> None:
-        # Indices are tried outermost first and only a clearly larger gap replaces the best, so
-        # ties keep the outermost lines; a branch that cannot beat the best is left at once.
-        nonlocal best
-        if smallest <= best[0] + _TIE:
-            return
-        if len(chosen) == pairs:
-            smallest = min(smallest, closing_gap(chosen[-1]))
-            if smallest > best[0] + _TIE:
-                best = (smallest, list(chosen))
-            return
-        place_in_half = len(chosen)
-        for index in range(chosen[-1] + 1, len(half) - (pairs - place_in_half) + 1):
-            widths = (diameters[place_in_half - 1] + diameters[place_in_half]) / 2
-            extend([*chosen, index], min(smallest, half[index] - half[chosen[-1]] - widths))
+        Taking each line as far out as the gap allows leaves the most room for the rest, so
+        this finds a choice if there is one, and of several the outermost.
+        """
+        chosen = [0]
+        for width in widths:
+            start = half[chosen[-1]] + width + least
+            index = bisect_left(half, start, lo=chosen[-1] + 1)
+            if index == len(half):
+                return None
+            chosen.append(index)
+        return chosen if -reach * half[chosen[-1]] - closing >= least else None
 
-    extend([0], float("inf"))
-    left = tuple(half[index] for index in best[1])
+    # The largest smallest gap is one of the gaps that two lines can leave.
+    values = {-reach * line - closing for line in half}
+    for width in set(widths):
+        values |= {right - left - width for left, right in combinations(half, 2)}
+    gaps = sorted(values)
+    too_large = bisect_left(gaps, True, key=lambda gap: outermost(gap - _TIE) is None)
+    chosen = outermost(gaps[too_large - 1] - _TIE)
+    assert chosen is not None  # the least gap of all can always be left
+    left = tuple(half[index] for index in chosen)
     centre = (0.0,) if centred else ()
     return (*left, *centre, *(-value for value in reversed(left)))
