@@ -192,6 +192,23 @@ def build(family: Family, wanted: Wanted | None) -> tuple[cp_model.CpModel, _Cou
     return model, counts
 
 
+def _add_totals(
+    model: cp_model.CpModel, family: Family, counts: _Counts, totals: NDArray[np.int64]
+) -> None:
+    """Tie variables to the totals of each size and list what they may be together.
+
+    They follow from the counts, so they do not multiply solutions.
+    """
+    variables = []
+    for size, bar in enumerate(family.bars):
+        weights = [[int(number == size) for number in range(len(family.bars))]] * family.layers
+        values = totals[:, size]
+        total = model.new_int_var(int(values.min()), int(values.max()), f"all {bar.designation}")
+        model.add(counts.weighted(weights) == total)
+        variables.append(total)
+    model.add_allowed_assignments(variables, totals.tolist())
+
+
 class _Collector(cp_model.CpSolverSolutionCallback):
     """Gathers every solution as counts of bars."""
 
@@ -249,6 +266,7 @@ def enumerate_family(
     *,
     presolve: bool = False,
     stop_after: int | None = None,
+    totals: NDArray[np.int64] | None = None,
 ) -> Enumeration:
     """List every member of a family that meets its conditions and is of interest.
 
@@ -264,6 +282,8 @@ def enumerate_family(
         See `solver`.
     stop_after : int, optional
         Number of solutions after which the enumeration is broken off.
+    totals : ndarray of int, shape (n, sizes), optional
+        Totals of bars of each size that a layout may have; others are left out.
 
     Returns
     -------
@@ -271,6 +291,8 @@ def enumerate_family(
         All solutions, or those found before a limit.
     """
     model, counts = build(family, wanted)
+    if totals is not None:
+        _add_totals(model, family, counts, totals)
     engine = solver(work, layers=family.layers, presolve=presolve)
     engine.parameters.enumerate_all_solutions = True
     collector = _Collector(counts, stop_after)

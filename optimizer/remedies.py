@@ -10,8 +10,6 @@ from catalogs import Bar, BarCatalog, bar_catalog, steel_grades
 from engine import (
     Concrete,
     EngineError,
-    Flange,
-    Outline,
     Section,
     Steel,
     check_layout,
@@ -19,7 +17,7 @@ from engine import (
 from engine.cover import required_cover
 from engine.units import plain
 from optimizer.candidates import Candidate
-from optimizer.flanges import slab_flange
+from optimizer.flanges import resized
 from optimizer.problem import MM_PER_IN, BarRules, Problem
 from optimizer.search import Search
 
@@ -122,7 +120,7 @@ def _changes(problem: Problem) -> Iterator[tuple[str, str, list[_Option]]]:
         [
             (
                 length(outline.web + n * step),
-                _resized(problem, n * step, 0.0),
+                _resized(problem, outline.web + n * step, outline.depth),
             )
             for n in range(1, _WIDTH_STEPS + 1)
         ],
@@ -134,7 +132,7 @@ def _changes(problem: Problem) -> Iterator[tuple[str, str, list[_Option]]]:
         [
             (
                 length(outline.depth + n * step),
-                _resized(problem, 0.0, n * step),
+                _resized(problem, outline.web, outline.depth + n * step),
             )
             for n in range(1, _DEPTH_STEPS + 1)
         ],
@@ -200,29 +198,8 @@ def _larger_covers(problem: Problem) -> list[float]:
     return sorted(cover for cover in covers if cover > section.cover)
 
 
-def _resized(problem: Problem, wider: float, deeper: float) -> Callable[[], Problem]:
-    """Another web, as the job's keys would give it: a flange given by its size stays as it is,
-    one that follows from the slab follows the web.
-    """
-
-    def build() -> Problem:
-        outline = problem.section.outline
-        web = outline.web + wider
-
-        def kept(flange: Flange | None) -> Flange | None:
-            if flange is None:
-                return None
-            beyond = flange.width - outline.web
-            share = 0.5 if flange.left is None or not beyond else flange.left / beyond
-            return replace(flange, left=max(0.0, flange.width - web) * share)
-
-        top = kept(outline.top) if problem.slab is None else slab_flange(problem.slab, web)
-        changed = Outline(
-            web=web, depth=outline.depth + deeper, top=top, bottom=kept(outline.bottom)
-        )
-        return replace(problem, section=replace(problem.section, outline=changed))
-
-    return build
+def _resized(problem: Problem, web: float, depth: float) -> Callable[[], Problem]:
+    return lambda: resized(problem, web, depth)
 
 
 def _stronger_concrete(problem: Problem, fc: float) -> Callable[[], Problem]:

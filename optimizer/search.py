@@ -18,7 +18,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from engine import Batch, Layout, assess, place
+from engine import Batch, Layout, Placement, Section, assess, place
 from engine.assessment import ROUNDING, service_stress
 from engine.crack_control import largest_spacing
 from engine.detailing_checks import section_rows
@@ -178,6 +178,53 @@ def layout_of(family: Family, counts: NDArray[np.int64]) -> Layout:
     )
 
 
+class Judged:
+    """Layouts of a family as the engine judges them, in two steps.
+
+    Strength, ductility, minimum steel and height are decided for all at once; positions of bars
+    are worked out one by one, for those that matter.
+
+    Parameters
+    ----------
+    section : Section
+        Section with its demand.
+    family : Family
+        Family of the layouts.
+    counts : ndarray of int, shape (n, layers, sizes)
+        Bars of each size in each layer.
+    """
+
+    def __init__(self, section: Section, family: Family, counts: NDArray[np.int64]) -> None:
+        self.section = section
+        if len(counts):
+            counts = counts[assess(section, Batch(bars=family.bars, counts=counts)).passes]
+        self.counts = counts
+        self.batch = Batch(bars=family.bars, counts=counts)
+        self._s = np.empty(0)
+        if len(counts):
+            stress = service_stress(section, self.batch)
+            self._s = largest_spacing(section.edition, stress, section.bar_face)
+
+    def placement(self, row: int, layout: Layout) -> Placement | None:
+        """Place one of the layouts left.
+
+        Parameters
+        ----------
+        row : int
+            Row of `counts`.
+        layout : Layout
+            The same layout.
+
+        Returns
+        -------
+        Placement or None
+            Positions, or None if a gap or the spacing for crack control fails.
+        """
+        placed = place(self.section, layout)
+        good = placed.layers[0].spacing <= self._s[row] * (1 + ROUNDING)
+        return placed if placed.gaps_fit and good else None
+
+
 class Search:
     """Search of one section; see the module's text for its logic.
 
@@ -293,18 +340,13 @@ class Search:
 
     def _judge(self, prospect: _Prospect, counts: NDArray[np.int64]) -> None:
         """Let the engine decide about layouts, the cheapest first, as far as they matter."""
-        if not len(counts):
+        family, pool, ranking = prospect.family, self.pool, self.problem.ranking
+        judged = Judged(self.problem.section, family, counts)
+        if not len(judged.counts):
             return
-        section, ranking = self.problem.section, self.problem.ranking
-        family, pool = prospect.family, self.pool
-        counts = counts[assess(section, Batch(bars=family.bars, counts=counts)).passes]
-        if not len(counts):
-            return
-        batch = Batch(bars=family.bars, counts=counts)
-        s = largest_spacing(section.edition, service_stress(section, batch), section.bar_face)
-        main = batch.quantity(prospect.main.cost) + prospect.main.constant
-        mass = batch.quantity(prospect.mass.cost)
-        bars = batch.quantity(prospect.bars.cost)
+        main = judged.batch.quantity(prospect.main.cost) + prospect.main.constant
+        mass = judged.batch.quantity(prospect.mass.cost)
+        bars = judged.batch.quantity(prospect.bars.cost)
         for row in np.argsort(main, kind="stable"):
             if (
                 main[row] > pool.limit(family.pattern)
@@ -312,11 +354,11 @@ class Search:
                 and bars[row] > pool.fewest_bars
             ):
                 continue
-            layout = layout_of(family, counts[row])
+            layout = layout_of(family, judged.counts[row])
             if layout in pool.candidates:
                 continue
-            placement = place(section, layout)
-            if placement.gaps_fit and placement.layers[0].spacing <= s[row] * (1 + ROUNDING):
+            placement = judged.placement(row, layout)
+            if placement is not None:
                 pool.add(Candidate.of(layout, placement, score(layout, placement, ranking)))
 
 
