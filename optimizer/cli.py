@@ -26,9 +26,10 @@ from optimizer._version import VERSION
 from optimizer.errors import DefectError, JobError, OptimizerError
 from optimizer.files import check_target, write_text
 from optimizer.job import Job, parse_job, read_job
-from optimizer.results import CheckResult, Progress, RankResult
+from optimizer.results import Progress
 
 if TYPE_CHECKING:
+    from optimizer.json_output import Result
     from optimizer.views import View
 
 app = typer.Typer(
@@ -146,7 +147,7 @@ def _check_json(target: str | None, job_file: Path | None = None) -> None:
         check_target(Path(target), sources=() if job_file is None else (job_file,))
 
 
-def _put_json(result: RankResult | CheckResult, target: str) -> bool:
+def _put_json(result: Result, target: str) -> bool:
     """Write JSON; True if nothing else is to be printed."""
     from optimizer.json_output import to_json
 
@@ -209,6 +210,27 @@ def check_command(
     skipped = len(job.problems) - len(result.sections)
     if skipped:
         view.say(f"{skipped} of {len(job.problems)} sections give no layers and were not checked.")
+    view.footer()
+    raise typer.Exit(0 if result.ok else 1)
+
+
+@app.command("options")
+def options_command(
+    job_file: JobFile, json_file: JsonFile = None, only: Only = None, plain: Plain = False
+) -> None:
+    """Alternatives to the layouts given in a job (key `layers`), and the sizes of the job."""
+    from optimizer.options import options
+    from optimizer.options_view import show_options
+
+    _check_json(json_file, job_file)
+    job = _selected(read_job(job_file), only)
+    with _progress() as tell:
+        result = options(job, tell)
+    if json_file is not None and _put_json(result, json_file):
+        raise typer.Exit(0 if result.ok else 1)
+    view = _view(plain=plain)
+    view.title(job.title, job.edition.name)
+    show_options(view, result)
     view.footer()
     raise typer.Exit(0 if result.ok else 1)
 

@@ -63,13 +63,38 @@ def check_target(path: Path, *, replace: bool = True, sources: tuple[Path, ...] 
 
 
 def write_text(path: Path, text: str, *, replace: bool = True) -> None:
-    """Write a text file by way of a temporary one beside it.
+    """Write a text file in UTF-8; see `write_bytes`.
 
     Parameters
     ----------
     path : Path
         File to write.
     text : str
+        Its content; line ends are written as they are.
+    replace : bool
+        Whether an existing file may be replaced.
+
+    Raises
+    ------
+    OutputError
+        If the file exists and must not be replaced, or cannot be written.
+    """
+    try:
+        data = text.encode("utf-8")
+    except UnicodeEncodeError as error:
+        msg = f"{short(str(path))}: cannot be written: {_reason(error)}"
+        raise OutputError(msg) from None
+    write_bytes(path, data, replace=replace)
+
+
+def write_bytes(path: Path, data: bytes, *, replace: bool = True) -> None:
+    """Write a file by way of a temporary one beside it.
+
+    Parameters
+    ----------
+    path : Path
+        File to write.
+    data : bytes
         Its content.
     replace : bool
         Whether an existing file may be replaced.
@@ -85,8 +110,8 @@ def write_text(path: Path, text: str, *, replace: bool = True) -> None:
         handle, name = tempfile.mkstemp(dir=target.parent, prefix=".cagewright-")
         temporary = Path(name)
         try:
-            with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as file:
-                file.write(text)
+            with os.fdopen(handle, "wb") as file:
+                file.write(data)
             temporary.chmod(mode)
             temporary.replace(target)
         except BaseException:

@@ -14,6 +14,7 @@ from typing import Any
 
 from pydantic import ValidationError
 
+from catalogs import CatalogError, PriceList, price_list
 from engine import (
     EDITIONS,
     Edition,
@@ -41,11 +42,17 @@ class Job:
         Code edition, which also decides the units.
     problems : tuple of Problem
         One for each section, in the file's order.
+    prices : PriceList or None
+        Prices and carbon factors for options.
+    palette : int or None
+        Most bar sizes on the whole job, for options.
     """
 
     title: str
     edition: Edition
     problems: tuple[Problem, ...]
+    prices: PriceList | None = None
+    palette: int | None = None
 
 
 def read_job(path: str | Path) -> Job:
@@ -128,7 +135,23 @@ def parse_job(text: str, *, name: str = "job", base: Path | None = None) -> Job:
     if not keys.title.isprintable():
         msg = f"{name}: title: got {short(repr(keys.title))}; allowed: printable text on one line"
         raise JobError(msg)
-    return Job(title=keys.title, edition=edition, problems=tuple(problems))
+    return Job(
+        title=keys.title,
+        edition=edition,
+        problems=tuple(problems),
+        prices=_prices(keys, edition, name, base),
+        palette=keys.options.palette,
+    )
+
+
+def _prices(keys: JobKeys, edition: Edition, name: str, base: Path | None) -> PriceList | None:
+    if keys.options.prices is None:
+        return None
+    try:
+        return price_list(keys.options.prices, edition.units, base)
+    except CatalogError as error:
+        msg = f"{name}: options.prices: {error}"
+        raise JobError(msg) from None
 
 
 def _text_of(path: Path) -> str:

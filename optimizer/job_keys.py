@@ -17,6 +17,7 @@ from optimizer.job_messages import quoted
 
 MOST_SECTIONS = 2000
 MOST_KEPT = 200
+MOST_VARIANTS = 200
 
 
 def _quantity(
@@ -71,6 +72,7 @@ Modulus = Annotated[float, _quantity("stress", (5e5, 12e6, "psi"), (4000, 80e3, 
 Constant = Annotated[float, Field(ge=0, le=1000, allow_inf_nan=False, strict=True)]
 Lightweight = Annotated[float, Field(ge=0.75, le=1.0, allow_inf_nan=False, strict=True)]
 Name = Annotated[str, Field(min_length=1, max_length=60, strict=True)]
+Names = Annotated[list[Name], Field(max_length=12)]
 Layers = Annotated[list[Annotated[str, Field(strict=True, max_length=200)]], Field(min_length=1)]
 
 
@@ -122,6 +124,25 @@ class RankingKeys(_Keys):
     )
 
 
+class OptionKeys(_Keys):
+    """Keys of `[options]`: what may change against a drawn layout."""
+
+    sizes: StrictBool | None = None
+    layers: StrictBool | None = None
+    mixing: StrictBool | None = None
+    grades: Names | None = None
+    stirrups: Names | None = None
+    widths: Annotated[list[SectionSize], Field(max_length=12)] | None = None
+    depths: Annotated[list[SectionSize], Field(max_length=12)] | None = None
+
+
+class JobOptionKeys(OptionKeys):
+    """Keys of `[options]` that hold for the whole job."""
+
+    prices: Annotated[str, Field(min_length=1, max_length=500, strict=True)] | None = None
+    palette: Annotated[int, Field(strict=True, ge=1, le=12)] | None = None
+
+
 class FlangeKeys(_Keys):
     """A flange given by its size."""
 
@@ -158,6 +179,8 @@ class SectionKeys(MaterialKeys, BarKeys, RankingKeys):
     layers: Layers | None = None
     opposite: Layers | None = None
     count_opposite: StrictBool = False
+    options: OptionKeys = OptionKeys()
+    length: Span | None = None
 
 
 class JobKeys(_Keys):
@@ -169,4 +192,5 @@ class JobKeys(_Keys):
     materials: MaterialKeys = MaterialKeys()
     bars: BarKeys = BarKeys()
     ranking: RankingKeys = RankingKeys()
+    options: JobOptionKeys = JobOptionKeys()
     section: Annotated[list[SectionKeys], Field(min_length=1, max_length=MOST_SECTIONS)]

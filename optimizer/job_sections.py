@@ -24,9 +24,9 @@ from engine import (
 from engine.units import plain
 from optimizer.errors import JobError
 from optimizer.flanges import slab_flange
-from optimizer.job_keys import FlangeKeys, JobKeys, SectionKeys
+from optimizer.job_keys import MOST_VARIANTS, FlangeKeys, JobKeys, SectionKeys
 from optimizer.job_messages import short
-from optimizer.problem import MM_PER_IN, SI_MASS_FACTOR, BarRules, Problem, Ranking
+from optimizer.problem import MM_PER_IN, SI_MASS_FACTOR, BarRules, Levers, Problem, Ranking
 
 _T = TypeVar("_T")
 
@@ -101,7 +101,48 @@ class SectionReader:
             ranking=self._ranking(section.aggregate),
             drawn=drawn,
             slab=self._slab(),
+            levers=self._levers(catalog),
+            length=self._length(),
         )
+
+    def _length(self) -> float:
+        """Length in the unit that mass per length counts in, ft or m."""
+        if self.keys.length is None:
+            return 1.0
+        return self.keys.length / (12.0 if self.unit == 1.0 else 1000.0)
+
+    def _levers(self, catalog: BarCatalog) -> Levers:
+        own, job = self.keys.options, self.job.options
+
+        def given(key: str, default: _T) -> _T:
+            for level in (own, job):
+                value = getattr(level, key)
+                if value is not None:
+                    return value  # type: ignore[no-any-return]  # the field's type is _T
+            return default
+
+        none: list[str] = []
+        with self._key("options.grades"):
+            steels = tuple(self._graded(name, "options.grades") for name in given("grades", none))
+        with self._key("options.stirrups"):
+            stirrups = tuple(catalog.bar(name) for name in given("stirrups", none))
+        sizes: list[float] = []
+        levers = Levers(
+            sizes=given("sizes", True),
+            layers=given("layers", True),
+            mixing=given("mixing", True),
+            steels=steels,
+            stirrups=stirrups,
+            widths=tuple(given("widths", sizes)),
+            depths=tuple(given("depths", sizes)),
+        )
+        if levers.combinations > MOST_VARIANTS:
+            msg = (
+                f"{self.where}, options: {levers.combinations} combinations of grades, stirrups,"
+                f" widths and depths; allowed: up to {MOST_VARIANTS}"
+            )
+            raise JobError(msg)
+        return levers
 
     def _catalog(self) -> BarCatalog:
         name = self._own_or(self.job.bars, "catalog", _CATALOGS[self.edition.units])
@@ -146,11 +187,11 @@ class SectionReader:
         )
         raise JobError(msg)
 
-    def _graded(self, name: str) -> Steel:
+    def _graded(self, name: str, key: str = "steel") -> Steel:
         grade = steel_grade(name)
         if self.edition.name not in grade.editions:
             msg = (
-                f"{self.where}, steel: got {name!r}; {self.edition.name} does not take it for"
+                f"{self.where}, {key}: got {name!r}; {self.edition.name} does not take it for"
                 f" flexure; allowed with: {', '.join(grade.editions)}"
             )
             raise JobError(msg)

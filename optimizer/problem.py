@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 from catalogs import Bar
-from engine import Layout, Section, Slab
+from engine import Layout, Section, Slab, Steel
 
 MM_PER_IN = 25.4
 SI_MASS_FACTOR = 1.488
@@ -70,6 +71,43 @@ class Ranking:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Levers:
+    """Switches of `[options]`.
+
+    Attributes
+    ----------
+    sizes, layers, mixing : bool
+        Whether other sizes than the drawn ones, more layers, and two sizes in a layout may be
+        used, within the job's bars.
+    steels : tuple of Steel
+        Grades to try beside the section's own.
+    stirrups : tuple of Bar
+        Stirrup sizes to try beside the section's own.
+    widths, depths : tuple of float
+        Web widths and overall depths to try beside the section's own. [in or mm]
+    """
+
+    sizes: bool = True
+    layers: bool = True
+    mixing: bool = True
+    steels: tuple[Steel, ...] = ()
+    stirrups: tuple[Bar, ...] = ()
+    widths: tuple[float, ...] = ()
+    depths: tuple[float, ...] = ()
+
+    @property
+    def combinations(self) -> int:
+        """Number of variants at most, the drawn one included. [-]"""
+        numbers = (self.steels, self.stirrups, self.widths, self.depths)
+        return math.prod(1 + len(others) for others in numbers)
+
+    @property
+    def envelope(self) -> bool:
+        """Whether the outline may change."""
+        return bool(self.widths or self.depths)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Problem:
     """One section of a job, ready for the search.
 
@@ -85,6 +123,11 @@ class Problem:
         Layout given in the job, for the check.
     slab : Slab or None
         Slab that the top flange follows from, if it was not given by its size.
+    levers : Levers
+        What options against the drawn layout may change.
+    length : float
+        Length of beam that the section stands for, in totals of the job; 1 where none is given.
+        [ft or m]
     """
 
     section: Section
@@ -92,3 +135,5 @@ class Problem:
     ranking: Ranking
     drawn: Layout | None = None
     slab: Slab | None = None
+    levers: Levers = Levers()
+    length: float = 1.0

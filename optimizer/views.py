@@ -118,7 +118,8 @@ class View:
         self.say()
         self.checked(chosen, f"Line {chosen.rank}: {chosen.checked.layout.label}")
 
-    def _table(self) -> Table:
+    def table(self) -> Table:
+        """Start a table of this program's look."""
         return Table(box=None, padding=(0, 0, 0, 1), pad_edge=False, header_style="underline")
 
     def _row_of(self, table: Table, *cells: str) -> None:
@@ -127,7 +128,7 @@ class View:
 
     def _short_list(self, result: RankedSection) -> Table:
         system = result.section.edition.system
-        table = self._table()
+        table = self.table()
         table.add_column("#", justify="right", no_wrap=True)
         table.add_column("layout", min_width=10)
         for name in ("mass", "score", *TERMS, "phiMn", "use", "eps_t", "gap"):
@@ -247,7 +248,7 @@ class View:
             self.say()
             return
         self.say("Single changes that make a layout possible, each verified by a search:")
-        table = self._table()
+        table = self.table()
         mass = system.trade["mass_per_length"]
         for name in ("key", "now", "change to", "best layout then"):
             table.add_column(name)
@@ -270,7 +271,7 @@ class View:
         metric = catalog.system == "si"
         length, mass = ("mm", "kg/m") if metric else ("in", "lb/ft")
         self.say(catalog.name, "bold")
-        table = self._table()
+        table = self.table()
         table.add_column("size", no_wrap=True)
         for name in (f"db [{length}]", f"Ab [{length}^2]", f"mass [{mass}]", "relative labour"):
             table.add_column(name, justify="right", no_wrap=True, min_width=9)

@@ -1,0 +1,250 @@
+"""What an option changes against the drawn layout, and what has to be agreed to."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from catalogs import Bar
+from engine import CheckedLayout, OutOfRangeError, Section
+from engine.confinement import confinement_of, is_top_bar
+from engine.development import straight_length
+from engine.hooks import hooked_length
+from engine.laps import lap_length
+from engine.units import plain
+from optimizer.measures import Band, Measures
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Difference:
+    """One figure drawn and of an option.
+
+    Attributes
+    ----------
+    name : str
+        What it is.
+    kind : str
+        ``length``, ``area``, ``moment``, ``mass_per_length``, ``money``, ``carbon``, ``percent``
+        or ``count``.
+    drawn, option : float or None
+        Values in inner units; None where there is none.
+    """
+
+    name: str
+    kind: str
+    drawn: float | None
+    option: float | None
+
+    @property
+    def change(self) -> float | None:
+        """Option less drawn."""
+        if self.drawn is None or self.option is None:
+            return None
+        return self.option - self.drawn
+
+    @property
+    def percent(self) -> float | None:
+        """Change over drawn. [%]"""
+        if self.change is None or not self.drawn or self.kind == "percent":
+            return None
+        return 100.0 * self.change / self.drawn
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Anchorage:
+    """Lengths of the largest bars of a layout.
+
+    Attributes
+    ----------
+    straight, hooked : float
+        Development lengths. [in or mm]
+    lap : float or None
+        Class B lap; None where bars may not be lapped. [in or mm]
+    """
+
+    straight: float
+    hooked: float
+    lap: float | None
+
+
+def anchorage(checked: CheckedLayout) -> Anchorage:
+    """Development of a layout's largest bars, without transverse steel counted.
+
+    Parameters
+    ----------
+    checked : CheckedLayout
+        Layout in place.
+
+    Returns
+    -------
+    Anchorage
+        Lengths by the section's edition; uncoated bars, no reduction for excess steel.
+    """
+    section = checked.section
+    bar = checked.layout.sizes[0]
+    confinement = confinement_of(section, checked.placement).ratio
+    top = is_top_bar(section, checked.placement)
+    straight = straight_length(
+        section.concrete, section.steel, bar, confinement=confinement, top=top
+    )
+    try:
+        lap = lap_length(
+            section.concrete, section.steel, bar, confinement=confinement, top=top
+        ).length
+    except OutOfRangeError:
+        lap = None  # 25.5.1.1: no laps above No. 11
+    hooked = hooked_length(section.concrete, section.steel, bar)
+    return Anchorage(straight=straight.length, hooked=hooked.length, lap=lap)
+
+
+def tie_spacing(section: Section, smallest: Bar) -> float:
+    """Largest stirrup spacing if these bars are counted in compression, 9.7.6.4.3.
+
+    Parameters
+    ----------
+    section : Section
+        Section with its stirrup.
+    smallest : Bar
+        Smallest bar.
+
+    Returns
+    -------
+    float
+        Lesser of 16 db, 48 ds and the least dimension. [in or mm]
+    """
+    least = min(section.outline.web, section.outline.depth)
+    return min(16.0 * smallest.diameter, 48.0 * section.stirrup.diameter, least)
+
+
+def differences(
+    drawn: CheckedLayout, drawn_figures: Measures, option: CheckedLayout, figures: Measures
+) -> tuple[Difference, ...]:
+    """Set the figures of an option beside the drawn ones.
+
+    Parameters
+    ----------
+    drawn, option : CheckedLayout
+        Both layouts, checked in their own sections.
+    drawn_figures, figures : Measures
+        Their measures.
+
+    Returns
+    -------
+    tuple of Difference
+        Every figure that a reader compares.
+    """
+    before, after = anchorage(drawn), anchorage(option)
+
+    def row(name: str, kind: str, one: float | None, other: float | None) -> Difference:
+        return Difference(name=name, kind=kind, drawn=one, option=other)
+
+    def typical(band: Band | None) -> float | None:
+        return None if band is None else band.typical
+
+    def reserve(checked: CheckedLayout) -> float:
+        return 100.0 * (checked.phi_Mn / checked.section.demand - 1.0)
+
+    def row_of(checked: CheckedLayout, name: str) -> float | None:
+        return next(check.demand for check in checked.checks if check.id == name)
+
+    rows = [
+        row("steel mass", "mass_per_length", drawn_figures.mass, figures.mass),
+        row("bars", "count", drawn_figures.bars, figures.bars),
+        row("sizes", "count", drawn_figures.sizes, figures.sizes),
+        row("layers", "count", drawn_figures.layers, figures.layers),
+        row("relative labour", "mass_per_length", drawn_figures.labour, figures.labour),
+    ]
+    if figures.cost is not None:
+        rows += [
+            row("placed cost", "money", typical(drawn_figures.cost), typical(figures.cost)),
+            row("carbon", "carbon", typical(drawn_figures.carbon), typical(figures.carbon)),
+        ]
+    rows += [
+        row("d", "length", drawn.d, option.d),
+        row("phi Mn", "moment", drawn.phi_Mn, option.phi_Mn),
+        row("reserve over Mu", "percent", reserve(drawn), reserve(option)),
+        row("steel area", "area", drawn.As, option.As),
+        row(
+            "minimum steel",
+            "area",
+            row_of(drawn, "minimum_steel"),
+            row_of(option, "minimum_steel"),
+        ),
+        row("bar spacing", "length", *(x.placement.layers[0].spacing for x in (drawn, option))),
+        row("largest spacing, 24.3", "length", drawn.largest_spacing, option.largest_spacing),
+        row("smallest clear gap", "length", *(_gap(x) for x in (drawn, option))),
+        row("straight development", "length", before.straight, after.straight),
+        row("hooked development, no ties", "length", before.hooked, after.hooked),
+        row("class B lap", "length", before.lap, after.lap),
+        row(
+            "stirrup spacing if in compression",
+            "length",
+            *(tie_spacing(x.section, x.layout.sizes[-1]) for x in (drawn, option)),
+        ),
+    ]
+    return tuple(rows)
+
+
+def _gap(checked: CheckedLayout) -> float | None:
+    gap = checked.placement.smallest_gap
+    return None if gap == float("inf") else gap
+
+
+def points_to_accept(
+    drawn: CheckedLayout,
+    option: CheckedLayout,
+    levers: tuple[tuple[str, str, str], ...],
+) -> tuple[str, ...]:
+    """What the engineer of record has to agree to, in plain sentences.
+
+    Parameters
+    ----------
+    drawn, option : CheckedLayout
+        Both layouts.
+    levers : tuple of (str, str, str)
+        Key, value drawn, value of the option.
+
+    Returns
+    -------
+    tuple of str
+        The points, those that change most first.
+    """
+    unit = option.section.length_unit
+    points: list[str] = []
+    points += [_LEVER_POINTS[key].format(before=old, after=new) for key, old, new in levers]
+    if drawn.layout != option.layout:
+        points.append(f"bars {option.layout.label} in place of {drawn.layout.label}")
+    before, after = anchorage(drawn), anchorage(option)
+    for what, one, other in (
+        ("straight development", before.straight, after.straight),
+        ("hooked development", before.hooked, after.hooked),
+        ("class B lap", before.lap, after.lap),
+    ):
+        if other is None and one is not None:
+            points.append("bars above No. 11 may not be lapped (25.5.1.1)")
+        elif one is not None and other is not None and other > one * 1.0001:
+            text = f"{what} grows from {plain(one)} to {plain(other)} {unit}"
+            points.append(f"{text}: cut-offs and ends to be checked")
+    if option.d < drawn.d * 0.9999:
+        points.append(f"d falls from {plain(drawn.d)} to {plain(option.d)} {unit}: shear strength")
+    if option.As < drawn.As * 0.9999:
+        points.append("less steel: deflection and service stress to be checked again")
+    if tie_spacing(option.section, option.layout.sizes[-1]) < 0.9999 * tie_spacing(
+        drawn.section, drawn.layout.sizes[-1]
+    ):
+        points.append("smaller bars: where they are counted in compression stirrups stand closer")
+    if option.section.steel.fy > drawn.section.steel.fy:
+        note = confinement_of(option.section, option.placement).note
+        points += [f"stirrups along development and laps: {note}"] if note else []
+    gap, drawn_gap = _gap(option), _gap(drawn)
+    if gap is not None and drawn_gap is not None and gap < drawn_gap * 0.9999:
+        points.append(f"clear gap falls from {plain(drawn_gap)} to {plain(gap)} {unit}")
+    return tuple(points)
+
+
+_LEVER_POINTS = {
+    "steel": "grade {after} in place of {before}: availability, mill certificates, higher stress"
+    " at service",
+    "stirrup": "stirrup {after} in place of {before}: shear to be designed again",
+    "width": "web {after} wide in place of {before}: formwork, loads, stiffness",
+    "depth": "depth {after} in place of {before}: headroom, loads, stiffness",
+}

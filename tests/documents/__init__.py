@@ -1,0 +1,1 @@
+"""Tests of the documents that results are written into."""
