@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from pathlib import Path
 
 from catalogs._names import key, shown
-from catalogs._price_forms import ANY, Entry, near, read_builtin_file, read_user_file
+from catalogs._price_forms import ANY, Entry, key_error, near, read_builtin_file, read_user_file
 from catalogs._spreads import BANDS, Spread
 from catalogs._tables import table_error
 from catalogs.errors import CatalogError, UnknownNameError
@@ -125,8 +125,8 @@ def _by_key(entries: Sequence[Entry]) -> Mapping[str, Entry]:
         if entry.key not in _KNOWN:
             problem = f"unknown key {shown(entry.key)}; allowed: {', '.join(_KNOWN)}"
             number, column = (entry.row.number, "key") if entry.row else (None, None)
-            near = near(entry.key, _KNOWN)
-            raise table_error(entry.file, problem, near, row=number, column=column)
+            guess = near(entry.key, _KNOWN)
+            raise table_error(entry.file, problem, guess, row=number, column=column)
         if entry.key != "steel":
             if entry.key in single:
                 rule = "allowed: every key but steel once"
@@ -186,4 +186,4 @@ def _spread(name: str, single: Mapping[str, Entry], unit: str) -> Spread:
     try:
         return Spread(low=low, typical=typical, high=high, source="; ".join(sources))
     except CatalogError as error:
-        raise table_error(given.file, str(error), column=name) from error
+        raise key_error(given.file, name, str(error)) from error

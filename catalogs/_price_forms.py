@@ -20,6 +20,7 @@ from catalogs.errors import TableError
 ANY = "*"
 
 _COLUMNS = tuple(Column(name=name) for name in ("key", "size", "grade", "value", "unit", "source"))
+_MOST_DOTS = 100
 _PRICE_KEYS = ("price", "grade", "size")
 
 
@@ -40,11 +41,12 @@ class Entry:
         """Make the error that says which part of the entry breaks which rule."""
         value = self.row.text("unit") if self.row and part == "unit" else getattr(self, part)
         text = shown(value) if isinstance(value, str) else shown(_plain(value))[1:-1]
+        problem = f"{text} cannot be used; {rule}"
+        if self.row is None:
+            place = self.place if part == "value" else f"{self.place}.{part}"
+            return key_error(self.file, place, problem, hint)
         what = self.key if part == "value" else f"{part} of {self.key}"
-        number = self.row.number if self.row else None
-        column = part if self.row else self.place
-        problem = f"{what} {text} cannot be used; {rule}"
-        return table_error(self.file, problem, hint, row=number, column=column)
+        return table_error(self.file, f"{what} {problem}", hint, row=self.row.number, column=part)
 
     def text(self, *, longest: int, part: str = "value", blanks: bool = True) -> str:
         """Return a part as text without outer blanks."""
@@ -117,6 +119,12 @@ def read_builtin_file(file: str) -> list[Entry]:
     return _from_toml(file, resources.files(__package__).joinpath("data", file).read_bytes())
 
 
+def key_error(file: str, place: str, problem: str, hint: str | None = None) -> TableError:
+    """Make a TableError about a key of a file that has no rows and columns."""
+    message = f"{file}, key {place}: {problem}" + (f"; hint: {hint}" if hint else "")
+    return TableError(message, file=file, column=place)
+
+
 def near(name: str, allowed: Sequence[str]) -> str | None:
     """Make the hint at the name that was most likely meant, if there is one."""
     guess = nearest(name, allowed)
@@ -143,14 +151,20 @@ def _from_table(table: Table) -> list[Entry]:
 def _from_toml(file: str, data: bytes) -> list[Entry]:
     if len(data) > MAX_BYTES:
         raise table_error(file, f"is larger than allowed; allowed: {MAX_BYTES // 1000} kB")
+    too_deep = "is nested too deeply; allowed: keys, [tables] and [[steel]]"
     try:
-        document = tomllib.loads(data.decode("utf-8-sig"))
+        text = data.decode("utf-8-sig")
     except UnicodeDecodeError as error:
         problem = f"byte 0x{data[error.start]:02x} is not UTF-8; allowed: UTF-8 text"
         raise table_error(file, problem) from error
+    for number, line in enumerate(text.splitlines(), 1):
+        # The time that a dotted key takes grows with the square of its length.
+        if line.count(".") > _MOST_DOTS and not line.lstrip().startswith("#"):
+            raise table_error(file, too_deep, row=number)
+    try:
+        document = tomllib.loads(text)
     except RecursionError:
-        problem = "is nested too deeply; allowed: keys, [tables] and [[steel]]"
-        raise table_error(file, problem) from None
+        raise table_error(file, too_deep) from None
     except ValueError as error:
         hint = "texts stand in quotes, numbers do not"
         raise table_error(file, f"is not TOML ({error}); allowed: TOML", hint) from error
@@ -171,12 +185,14 @@ def _from_toml(file: str, data: bytes) -> list[Entry]:
 def _steel_price(file: str, number: int, item: Any) -> Entry:
     place = f"steel[{number}]"
     if not isinstance(item, dict) or "price" not in item:
-        problem = f"{shown(_plain(item))} has no price; allowed: a table with price, grade, size"
-        raise table_error(file, problem, "write [[steel]] and price below it", column=place)
+        problem = (
+            f"{shown(_plain(item))[1:-1]} has no price; allowed: a table with price, grade, size"
+        )
+        raise key_error(file, place, problem, "write [[steel]] and price below it")
     for name in item:
         if name not in _PRICE_KEYS:
             problem = f"unknown key {shown(name)}; allowed: {', '.join(_PRICE_KEYS)}"
-            raise table_error(file, problem, near(name, _PRICE_KEYS), column=place)
+            raise key_error(file, place, problem, near(name, _PRICE_KEYS))
     return Entry(
         file=file,
         key="steel",

@@ -39,14 +39,7 @@ from pathlib import Path
 from catalogs._names import find, key
 from catalogs._price_entries import PriceEntries, builtin_entries, read_entries
 from catalogs._price_forms import ANY
-from catalogs._spreads import (
-    BANDS,
-    KG_PER_LB,
-    Band,
-    Spread,
-    published_carbon,
-    published_hours,
-)
+from catalogs._spreads import BANDS, KG_PER_LB, Band, Spread, published_carbon, published_hours
 from catalogs.bars import Bar, BarCatalog
 from catalogs.errors import CatalogError, UnknownNameError
 from catalogs.steel_grades import steel_grade
@@ -56,7 +49,6 @@ __all__ = ["BANDS", "BUILTIN_PRICE_LISTS", "Band", "PriceList", "Spread", "price
 _DEMO_FILES = {"us": "prices_demo_us.toml", "si": "prices_demo_si.csv"}
 BUILTIN_PRICE_LISTS: tuple[str, ...] = ("demo",)
 
-_M3_PER_YD3 = 0.9144**3
 # Mass a fixing hour is stated for: short ton [lb] or tonne [kg].
 _TON = {"us": 2000.0, "si": 1000.0}
 _MASS = {"us": "lb", "si": "kg"}
@@ -204,7 +196,7 @@ class PriceList:
         return kilograms * self.steel_carbon.at(band) / 1000.0
 
     def concrete_carbon_per_volume(self, band: Band) -> float:
-        """Return the embodied carbon of a volume of concrete, the volume of its price.
+        """Return the embodied carbon of a cubic metre of concrete, whatever the system.
 
         Parameters
         ----------
@@ -214,9 +206,9 @@ class PriceList:
         Returns
         -------
         float
-            Carbon per volume. [kgCO2e/yd3 or kgCO2e/m3]
+            Carbon per volume. [kgCO2e/m3]
         """
-        return self.concrete_carbon.at(band) * (_M3_PER_YD3 if self.system == "us" else 1.0)
+        return self.concrete_carbon.at(band)
 
     def sizes_not_in(self, catalog: BarCatalog) -> tuple[str, ...]:
         """Return the sizes that have a price here but do not exist in a catalogue.

@@ -160,7 +160,7 @@ def _checked(
             capacity_checks.flexural_strength(section, found),
             capacity_checks.net_tensile_strain(section, found),
             capacity_checks.minimum_steel(section, found, required),
-            detailing_checks.gap_row("clear_gap", placement),
+            detailing_checks.gap_row("clear_gap", section, placement),
             detailing_checks.layer_gap(section, layout),
             detailing_checks.arrangement(section, layout, placement, found),
             crack_checks.crack_control(section, placement, stress, spacing),

@@ -9,8 +9,6 @@ from engine.placement import Placement
 from engine.sections import Section
 from engine.units import plain
 
-_OUTER_FLANGE_RATIO = 0.0018  # 24.4.3.2, referred to by 24.3.4 (318-19; from memory for 318-14)
-
 
 def crack_control(section: Section, placement: Placement, fs: float, s: float) -> Check:
     """Spacing of the bars nearest the tension face, 24.3.2.
@@ -88,6 +86,28 @@ def side_face_steel(section: Section, fs: float) -> Check:
     return Check(id="side_face_steel", clause="9.7.2.3", state=State.PROVIDE, note=note)
 
 
+def shrinkage_ratio(section: Section) -> float:
+    """Ratio of shrinkage and temperature steel, 24.4.3.2.
+
+    Parameters
+    ----------
+    section : Section
+        Section with its steel and edition.
+
+    Returns
+    -------
+    float
+        0.0018 in the 2019 editions; in those of 2014 (from memory) 0.0020 below Grade 60 (420),
+        else max(0.0018 fy60/fy, 0.0014). [-]
+    """
+    edition, fy = section.edition, section.steel.fy
+    if edition.year != 2014:
+        return 0.0018
+    if fy < edition.eps_ty_permitted_for:
+        return 0.0020
+    return max(0.0018 * edition.eps_ty_permitted_for / fy, 0.0014)
+
+
 def flange_steel(section: Section) -> Check:
     """What 24.3.4 asks for where a flange is in tension.
 
@@ -109,18 +129,20 @@ def flange_steel(section: Section) -> Check:
             state=State.NOT_APPLICABLE,
             note="no flange in tension",
         )
-    unit = section.length_unit
-    note = "bars over the web only; tension bars beyond it are to be spread over "
+    unit, web = section.length_unit, section.outline.web
+    note = f"all bars lie over the web; be = {plain(flange.width)} {unit}"
+    state = State.PROVIDE
     if section.clear_span is None:
-        note += f"the lesser of be = {plain(flange.width)} {unit} and ln/10 (ln not given)"
+        note += ", and where it exceeds ln/10 (ln not given) bonded bars in the outer flange"
+    elif flange.width <= section.clear_span / 10.0:
+        state = State.OK
+        note += f" does not exceed ln/10 = {plain(section.clear_span / 10.0)} {unit}"
     else:
         tenth = section.clear_span / 10.0
-        note += f"{plain(min(flange.width, tenth))} {unit} (lesser of be and ln/10)"
-        if flange.width > tenth:
-            outer = flange.width - max(tenth, section.outline.web)
-            area = _OUTER_FLANGE_RATIO * outer * flange.thickness
-            note += (
-                f"; ln/10 governs: in the outer flange also bonded bars of"
-                f" {plain(area)} {section.edition.system.trade['area']} in all"
-            )
-    return Check(id="flange_steel", clause="24.3.4", state=State.PROVIDE, note=note)
+        outer = flange.width - max(tenth, web)
+        area = shrinkage_ratio(section) * outer * flange.thickness
+        note += (
+            f" exceeds ln/10 = {plain(tenth)} {unit}: bonded bars of {plain(area)}"
+            f" {section.edition.system.trade['area']} in all in the outer flange (24.4.3.2)"
+        )
+    return Check(id="flange_steel", clause="24.3.4", state=state, note=note)

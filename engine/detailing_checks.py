@@ -12,16 +12,19 @@ from engine.placement import Placement, gap_fits, place
 from engine.sections import Section
 from engine.units import plain
 
+_OFF_CENTRE = 1e-6  # sum of the bars' distances from the centreline, zero by symmetry
 _BARS_HELD_BY_CORNERS = 3  # two in the corners of the stirrup, one between them (9.7.6.4.4)
 
 
-def gap_row(row_id: str, placement: Placement) -> Check:
+def gap_row(row_id: str, section: Section, placement: Placement) -> Check:
     """Clear gaps within layers, 25.2.1.
 
     Parameters
     ----------
     row_id : str
         Id of the row.
+    section : Section
+        Section with its aggregate.
     placement : Placement
         Where the bars lie.
 
@@ -46,8 +49,20 @@ def gap_row(row_id: str, placement: Placement) -> Check:
         limit=layer.gap,
         ratio=ratio_of(layer.gap_required, layer.gap),
         state=verdict(gap_fits(layer.gap, layer.gap_required)),
-        note=f"layer {number} is the tightest" if len(placement.layers) > 1 else "",
+        note=_governing(section, layer.gap_required)
+        + (f"; layer {number} is the tightest" if len(placement.layers) > 1 else ""),
     )
+
+
+def _governing(section: Section, required: float) -> str:
+    """Which of the terms of a required gap is the largest."""
+    if section.min_gap > 0.0 and gap_fits(section.min_gap, required):
+        return "min_gap of the job, more than 25.2.1 asks"
+    if gap_fits(section.edition.least_gap, required):
+        return f"{plain(section.edition.least_gap)} {section.length_unit} governs"
+    if gap_fits(4.0 / 3.0 * section.aggregate, required):
+        return "4/3 of the aggregate governs"
+    return "db governs"
 
 
 def layer_gap(section: Section, layout: Layout) -> Check:
@@ -113,7 +128,9 @@ def arrangement(section: Section, layout: Layout, placement: Placement, found: A
     faults = _stacking_faults(layout, placement)
     remarks = []
     for number, layer in enumerate(layout.layers, 1):
-        if sum(count % 2 for _, count in layer.groups) > 1:
+        x = placement.layers[number - 1].x
+        odd = sum(count % 2 for _, count in layer.groups)
+        if odd > 1 or abs(sum(x)) > _OFF_CENTRE:
             remarks.append(f"layer {number} is not symmetric")
         below = layout.layers[number - 2] if number > 1 else layer
         if layer.largest.diameter > below.largest.diameter:
@@ -207,7 +224,7 @@ def opposite_bars(section: Section) -> Check:
         note = "no bars given at the other face"
         return Check(id=row_id, clause="25.2", state=State.NOT_APPLICABLE, note=note)
     placement = place(section.opposite_face(), section.opposite)
-    row = gap_row(row_id, placement)
+    row = gap_row(row_id, section, placement)
     faults = _stacking_faults(section.opposite, placement)
     if not cover_fits(section, section.opposite.sizes[0].diameter):
         faults.append(f"too little cover ({section.edition.cover_clause})")

@@ -19,7 +19,10 @@ def _in_range(what: str, value: float, limits: tuple[float, float], unit: str, w
     low, high = limits
     if not (math.isfinite(value) and low <= value <= high):
         of = f"{value:.6g} {unit}".strip()
-        msg = f"got {of}; allowed: {plain(low)} to {plain(high)} {unit}".strip() + f" ({where})"
+        msg = (
+            f"got {of}; allowed: {plain(low)} to {plain(high)} {unit}".strip()
+            + f" ({where}; own limits)"
+        )
         raise OutOfRangeError(msg, what=what)
 
 
@@ -92,6 +95,8 @@ class Steel:
         Specified yield strength. [psi or MPa]
     name : str
         Grade as written in the job, or empty where only fy was given.
+    note : str
+        What a reader has to know about the grade.
 
     Raises
     ------
@@ -102,6 +107,7 @@ class Steel:
     edition: Edition
     fy: float
     name: str = ""
+    note: str = ""
 
     def __post_init__(self) -> None:
         unit = self.edition.system.trade["stress"]

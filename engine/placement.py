@@ -145,13 +145,21 @@ def place(section: Section, layout: Layout) -> Placement:
         if number == 0:
             x = equal_gaps(diameters, reach)
         else:
-            chosen = stack(lines, diameters)
+            chosen = stack(lines, diameters) or _stand(lines, len(diameters))
             aligned = chosen is not None and chosen[-1] <= reach + _TIE
             x = chosen if chosen is not None and aligned else equal_gaps(diameters, reach)
         placed.append(_measure(section, order, x, bottom, aligned))
         lines = x
         bottom += max(diameters) + section.layer_gap
     return Placement(tuple(placed))
+
+
+def _stand(lines: tuple[float, ...], count: int) -> tuple[float, ...] | None:
+    """Lines for a layer that cannot be symmetric over them: half of them from each side."""
+    if count > len(lines):
+        return None
+    right = count // 2
+    return (*lines[: count - right], *(lines[len(lines) - right :] if right else ()))
 
 
 def _measure(

@@ -6,31 +6,26 @@ layout fails; 2 bad input or usage. Data go to standard output, talk to standard
 
 from __future__ import annotations
 
-import io
 import os
 import sys
-from collections.abc import Iterator
-from contextlib import contextmanager, suppress
+from contextlib import suppress
 from dataclasses import replace
 from importlib.resources import files
 from pathlib import Path
 from typing import TYPE_CHECKING, Annotated
 
 import typer
-from rich.console import Console
-from rich.text import Text
 
 from catalogs import BUILTIN_CATALOGS, CatalogError, bar_catalog
 from engine import EngineError
 from optimizer._version import VERSION
 from optimizer.errors import DefectError, JobError, OptimizerError
-from optimizer.files import check_target, write_text
+from optimizer.files import write_text
 from optimizer.job import Job, parse_job, read_job
-from optimizer.results import Progress
+from optimizer.outputs import OutputFiles, ReaderGoneError, data_view, progress_line
 
 if TYPE_CHECKING:
-    from optimizer.json_output import Result
-    from optimizer.views import View
+    pass
 
 app = typer.Typer(
     name="cagewright",
@@ -43,7 +38,6 @@ app = typer.Typer(
 )
 
 _STARTERS = {"us": "starter_us.toml", "si": "starter_si.toml"}
-_NARROWEST = 80
 
 JobFile = Annotated[Path, typer.Argument(metavar="JOB", help="Job file (TOML).")]
 JsonFile = Annotated[
@@ -53,6 +47,19 @@ JsonFile = Annotated[
         metavar="FILE",
         help="Also write the result as JSON; - prints it and nothing else.",
     ),
+]
+HtmlFile = Annotated[
+    Path | None,
+    typer.Option("--html", metavar="FILE", help="Also write one page to read and print."),
+]
+XlsxFile = Annotated[
+    Path | None, typer.Option("--xlsx", metavar="FILE", help="Also write a workbook.")
+]
+DxfFile = Annotated[
+    Path | None, typer.Option("--dxf", metavar="FILE", help="Also draw the sections to scale.")
+]
+CsvFile = Annotated[
+    Path | None, typer.Option("--csv", metavar="FILE", help="Also write the list as a table.")
 ]
 Plain = Annotated[bool, typer.Option("--plain", help="Draw with ASCII characters only.")]
 Only = Annotated[
@@ -66,18 +73,6 @@ Show = Annotated[
 Brief = Annotated[bool, typer.Option("--brief", help="Short lists only, without checks.")]
 
 
-class _ReaderGone(Exception):  # noqa: N818 - no error: the reader has seen enough
-    """Whoever reads standard output has closed it (head, less)."""
-
-
-class _DataConsole(Console):
-    """Console for data whose reader may leave early."""
-
-    def on_broken_pipe(self) -> None:
-        """Stop quietly instead of exiting with 1, which means something else here."""
-        raise _ReaderGone
-
-
 def _print_version(value: bool) -> None:
     if value:
         typer.echo(f"cagewright {VERSION}")
@@ -85,7 +80,7 @@ def _print_version(value: bool) -> None:
 
 
 @app.callback()
-def _options(
+def _before_the_command(
     version_asked: Annotated[
         bool,
         typer.Option(
@@ -97,35 +92,6 @@ def _options(
     ] = False,
 ) -> None:
     """Options before the command."""
-
-
-def _view(*, plain: bool) -> View:
-    """View on standard output, never narrower than what reports are made for."""
-    from optimizer.views import View
-
-    if isinstance(sys.stdout, io.TextIOWrapper):
-        # A mark may hold characters that the terminal's encoding lacks.
-        sys.stdout.reconfigure(errors="replace")
-    console = _DataConsole(highlight=False, soft_wrap=False)
-    if not console.is_terminal or console.width < _NARROWEST:
-        console = _DataConsole(highlight=False, soft_wrap=False, width=_NARROWEST)
-    return View(console, plain_text=plain or not _in_unicode())
-
-
-def _in_unicode() -> bool:
-    return "utf" in (getattr(sys.stdout, "encoding", None) or "").lower()
-
-
-@contextmanager
-def _progress() -> Iterator[Progress]:
-    """A line on standard error while a job of many sections runs in a terminal."""
-    talk = Console(stderr=True, highlight=False)
-    with talk.status("") as status:
-
-        def tell(done: int, of: int, mark: str) -> None:
-            status.update(Text(f"section {done + 1} of {of}: {mark}"))
-
-        yield tell
 
 
 def _selected(job: Job, only: list[str] | None) -> Job:
@@ -141,49 +107,33 @@ def _selected(job: Job, only: list[str] | None) -> Job:
     )
 
 
-def _check_json(target: str | None, job_file: Path | None = None) -> None:
-    """Refuse an impossible place before the work, not after it."""
-    if target is not None and target != "-":
-        check_target(Path(target), sources=() if job_file is None else (job_file,))
-
-
-def _put_json(result: Result, target: str) -> bool:
-    """Write JSON; True if nothing else is to be printed."""
-    from optimizer.json_output import to_json
-
-    if target != "-":
-        write_text(Path(target), to_json(result))
-        return False
-    try:
-        sys.stdout.write(to_json(result, ascii_only=not _in_unicode()))
-        sys.stdout.flush()
-    except BrokenPipeError:
-        raise _ReaderGone from None
-    return True
-
-
 @app.command("rank")
 def rank_command(
     job_file: JobFile,
     json_file: JsonFile = None,
+    html: HtmlFile = None,
+    xlsx: XlsxFile = None,
+    dxf: DxfFile = None,
+    csv: CsvFile = None,
     show: Show = None,
     brief: Brief = False,
     only: Only = None,
     plain: Plain = False,
 ) -> None:
     """Ranked short list of bar layouts for every section of a job."""
-    _check_json(json_file, job_file)
-    _rank(_selected(read_job(job_file), only), json_file, show, brief, plain)
+    files = OutputFiles(json=json_file, html=html, xlsx=xlsx, dxf=dxf, csv=csv)
+    files.check(job_file)
+    _rank(_selected(read_job(job_file), only), files, show, brief, plain)
 
 
-def _rank(job: Job, json_file: str | None, show: int | None, brief: bool, plain: bool) -> None:
+def _rank(job: Job, files: OutputFiles, show: int | None, brief: bool, plain: bool) -> None:
     from optimizer.results import rank
 
-    with _progress() as tell:
+    with progress_line() as tell:
         result = rank(job, tell)
-    if json_file is not None and _put_json(result, json_file):
+    if files.write(result):
         raise typer.Exit(0 if result.ok else 1)
-    view = _view(plain=plain)
+    view = data_view(plain=plain)
     view.title(job.title, job.edition.name)
     for section in result.sections:
         view.ranked(section, show=show, brief=brief)
@@ -193,17 +143,25 @@ def _rank(job: Job, json_file: str | None, show: int | None, brief: bool, plain:
 
 @app.command("check")
 def check_command(
-    job_file: JobFile, json_file: JsonFile = None, only: Only = None, plain: Plain = False
+    job_file: JobFile,
+    json_file: JsonFile = None,
+    html: HtmlFile = None,
+    xlsx: XlsxFile = None,
+    dxf: DxfFile = None,
+    csv: CsvFile = None,
+    only: Only = None,
+    plain: Plain = False,
 ) -> None:
     """Full check of the layouts given in a job (key `layers`)."""
     from optimizer.results import check
 
-    _check_json(json_file, job_file)
+    files = OutputFiles(json=json_file, html=html, xlsx=xlsx, dxf=dxf, csv=csv)
+    files.check(job_file)
     job = _selected(read_job(job_file), only)
     result = check(job)
-    if json_file is not None and _put_json(result, json_file):
+    if files.write(result):
         raise typer.Exit(0 if result.ok else 1)
-    view = _view(plain=plain)
+    view = data_view(plain=plain)
     view.title(job.title, job.edition.name)
     for section in result.sections:
         view.checked_section(section)
@@ -216,19 +174,30 @@ def check_command(
 
 @app.command("options")
 def options_command(
-    job_file: JobFile, json_file: JsonFile = None, only: Only = None, plain: Plain = False
+    job_file: JobFile,
+    json_file: JsonFile = None,
+    html: HtmlFile = None,
+    xlsx: XlsxFile = None,
+    dxf: DxfFile = None,
+    csv: CsvFile = None,
+    only: Only = None,
+    plain: Plain = False,
 ) -> None:
     """Alternatives to the layouts given in a job (key `layers`), and the sizes of the job."""
+    files = OutputFiles(json=json_file, html=html, xlsx=xlsx, dxf=dxf, csv=csv)
+    files.check(job_file)
+    _options(_selected(read_job(job_file), only), files, plain)
+
+
+def _options(job: Job, files: OutputFiles, plain: bool) -> None:
     from optimizer.options import options
     from optimizer.options_view import show_options
 
-    _check_json(json_file, job_file)
-    job = _selected(read_job(job_file), only)
-    with _progress() as tell:
+    with progress_line() as tell:
         result = options(job, tell)
-    if json_file is not None and _put_json(result, json_file):
+    if files.write(result):
         raise typer.Exit(0 if result.ok else 1)
-    view = _view(plain=plain)
+    view = data_view(plain=plain)
     view.title(job.title, job.edition.name)
     show_options(view, result)
     view.footer()
@@ -245,6 +214,10 @@ def demo_command(
     show: Show = None,
     brief: Brief = False,
     plain: Plain = False,
+    folder: Annotated[
+        Path | None,
+        typer.Option("--folder", metavar="DIR", help="Also write the page of the options there."),
+    ] = None,
     job_file: Annotated[
         Path | None,
         typer.Option(
@@ -252,16 +225,23 @@ def demo_command(
         ),
     ] = None,
 ) -> None:
-    """Rank the built-in, invented scenario from start to end."""
+    """Run the built-in, invented scenario: ranking, then options for a drawn layout."""
     text = _packaged("demo.toml")
     if job_file is not None:
         write_text(job_file, text, replace=False)
         typer.echo(f"{job_file} written; run: cagewright rank {job_file}")
         return
-    _check_json(json_file)
+    files = OutputFiles(json=json_file)
+    files.check()
+    page = OutputFiles(html=None if folder is None else folder / "cagewright-demo.html")
+    page.check()
+    job = parse_job(text, name="demo")
+    # One of the demo's sections has no layout on purpose; the demo itself went well.
     with suppress(typer.Exit):
-        # One of the demo's sections has no layout on purpose; the demo itself went well.
-        _rank(parse_job(text, name="demo"), json_file, show, brief, plain)
+        _rank(job, files, show, brief, plain)
+    if json_file != "-":
+        with suppress(typer.Exit):
+            _options(job, page, plain)
 
 
 @app.command("new")
@@ -287,7 +267,7 @@ def bars_command(
 ) -> None:
     """Print the bar catalogues."""
     tables = [bar_catalog(name) for name in catalog or BUILTIN_CATALOGS]
-    view = _view(plain=plain)
+    view = data_view(plain=plain)
     for table in tables:
         view.catalog(table)
 
@@ -313,7 +293,7 @@ def run(arguments: list[str] | None = None) -> int:
         return stop.exit_code
     except typer.Abort:
         return 130
-    except (_ReaderGone, BrokenPipeError):
+    except (ReaderGoneError, BrokenPipeError):
         _leave_stdout()
         return 0
     except Exception as error:

@@ -41,7 +41,7 @@ UNICODE = Ink(
     corners="┌┐└┘",
     tees="┐┌┘└",
     stirrup="·",
-    bars="●○",
+    bars="●○×",
     cut="╱",
     broken="≈",
 )
@@ -51,7 +51,7 @@ ASCII = Ink(
     corners="++++",
     tees="++++",
     stirrup=".",
-    bars="@o",
+    bars="@ox",
     cut="/",
     broken="~",
 )
@@ -297,7 +297,8 @@ def _bars(
     rows = _layer_rows(section, scale, placement, at_bottom)
     for layer, row in zip(placement.layers, rows, strict=True):
         for x, diameter in zip(layer.x, layer.diameters, strict=True):
-            canvas.put(scale.x(x), row, ink.bars[0 if diameter >= largest else 1])
+            kind = 2 if at_bottom != section.sagging else 0 if diameter >= largest else 1
+            canvas.put(scale.x(x), row, ink.bars[kind])
 
 
 def _notes(

@@ -196,7 +196,8 @@ class SectionReader:
             )
             raise JobError(msg)
         fy = grade.yield_strength(self.edition.units)
-        return Steel(edition=self.edition, fy=fy, name=grade.name)
+        shown = grade.alias if self.edition.units == "si" and grade.alias else grade.name
+        return Steel(edition=self.edition, fy=fy, name=shown, note=grade.note)
 
     def _outline(self) -> Outline:
         keys = self.keys

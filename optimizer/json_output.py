@@ -3,8 +3,10 @@
 from __future__ import annotations
 
 import json
+from dataclasses import asdict
 from typing import Any
 
+from engine import Section
 from engine.units import UnitSystem
 from optimizer.diagnosis import Diagnosis
 from optimizer.json_layouts import capacity_data, layout_data, rows_data
@@ -65,13 +67,41 @@ def _ranked(result: RankResult) -> dict[str, Any]:
     }
 
 
+def _inputs(section: Section, system: UnitSystem) -> dict[str, Any]:
+    """What the section was, so that the result can be read alone."""
+    outline, opposite = section.outline, section.opposite
+    return {
+        "width": outline.web,
+        "depth": outline.depth,
+        "flange": None if outline.top is None else asdict(outline.top),
+        "bottom_flange": None if outline.bottom is None else asdict(outline.bottom),
+        "fc": section.concrete.fc,
+        "lambda": section.concrete.lightweight,
+        "steel": section.steel.name,
+        "fy": section.steel.fy,
+        "aggregate": section.aggregate,
+        "cover": section.cover,
+        "stirrup": section.stirrup.designation,
+        "layer_gap": section.layer_gap,
+        "min_gap": section.min_gap,
+        "exposure": section.exposure.value if section.exposure_given else None,
+        "Ms": None if section.Ms is None else system.to_trade("moment", section.Ms),
+        "opposite": None if opposite is None else opposite.label,
+        "count_opposite": section.count_opposite,
+        "statically_determinate": section.statically_determinate,
+        "tension_controlled": section.tension_controlled,
+    }
+
+
 def _ranked_section(section: RankedSection, system: UnitSystem) -> dict[str, Any]:
     data: dict[str, Any] = {
         "mark": section.section.mark,
         "Mu": system.to_trade("moment", section.section.Mu),
         "status": section.status,
         "proved": section.proved,
+        "inputs": _inputs(section.section, system),
         "ranked_by": section.problem.ranking.by,
+        "per_pattern": section.problem.ranking.per_pattern,
         "mass_floor": section.mass_floor,
     }
     if section.diagnosis is None:
@@ -90,6 +120,7 @@ def _checked(result: CheckResult) -> dict[str, Any]:
             {
                 "mark": section.section.mark,
                 "Mu": system.to_trade("moment", section.section.Mu),
+                "inputs": _inputs(section.section, system),
                 "status": section.status,
                 "candidates": [layout_data(section.layout, system)],
             }

@@ -12,14 +12,11 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, replace
 
-from ortools.sat.python import cp_model
-
 from catalogs import Bar
 from optimizer.candidates import Candidate
+from optimizer.palette_model import choose_size_sets
 from optimizer.problem import Problem
 from optimizer.search import Search
-
-_SCALE = 10_000
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -150,43 +147,20 @@ def best_of_size_sets(problem: Problem) -> tuple[dict[frozenset[int], Candidate]
 def _choose(
     members: list[tuple[Problem, dict[frozenset[int], Candidate]]], limit: int
 ) -> PaletteChoice | None:
-    bars = {bar.position: bar for problem, _ in members for bar in problem.rules.sizes}
-    model = cp_model.CpModel()
-    used = {position: model.new_bool_var(f"size {position}") for position in sorted(bars)}
-    model.add(cp_model.LinearExpr.sum(list(used.values())) <= limit)
-    picks: list[list[tuple[cp_model.IntVar, Candidate]]] = []
-    costs: list[int] = []
-    variables: list[cp_model.IntVar] = []
-    for number, (problem, found) in enumerate(members):
-        row = []
-        for sizes in sorted(found, key=sorted):
-            pick = model.new_bool_var(f"section {number} uses {sorted(sizes)}")
-            for position in sizes:
-                model.add_implication(pick, used[position])
-            variables.append(pick)
-            costs.append(round(_value(problem, found[sizes]) * _SCALE))
-            row.append((pick, found[sizes]))
-        model.add_exactly_one([pick for pick, _ in row])
-        picks.append(row)
-    model.minimize(cp_model.LinearExpr.weighted_sum(variables, costs))
-    engine = cp_model.CpSolver()
-    engine.parameters.num_workers = 1
-    engine.parameters.random_seed = 1
-    engine.parameters.linearization_level = 2
-    if not members or engine.solve(model) != cp_model.OPTIMAL:
+    costs = [
+        {sizes: _value(problem, candidate) for sizes, candidate in found.items()}
+        for problem, found in members
+    ]
+    chosen = choose_size_sets(costs, limit)
+    if chosen is None:
         return None
-    layouts = tuple(
-        next(candidate for pick, candidate in row if engine.boolean_value(pick)) for row in picks
-    )
-    total = math.fsum(
-        _value(problem, layout) for (problem, _), layout in zip(members, layouts, strict=True)
-    )
+    layouts = tuple(found[sizes] for (_, found), sizes in zip(members, chosen, strict=True))
     kept = {bar.position: bar for layout in layouts for bar in layout.layout.sizes}
     return PaletteChoice(
         limit=limit,
         sizes=tuple(kept[position] for position in sorted(kept)),
         layouts=layouts,
-        total=total,
+        total=math.fsum(row[sizes] for row, sizes in zip(costs, chosen, strict=True)),
         saving=0.0,
     )
 

@@ -20,15 +20,8 @@ from optimizer.diagnosis import Diagnosis
 from optimizer.drawing import ASCII, UNICODE, draw
 from optimizer.results import CheckedSection, RankedSection, RatedLayout
 from optimizer.scoring import TERMS
+from optimizer.wording import CAUTION, NOT_CHECKED, exemption_of, proof_of
 
-NOT_CHECKED = (
-    "Not checked: shear, torsion, deflection, development and splices, axial force,"
-    " slenderness and lateral bracing, seismic detailing, fire, corrosion, fatigue."
-)
-CAUTION = (
-    "For review by a licensed design professional. The local code and the authority having"
-    " jurisdiction govern."
-)
 _VERDICTS = {
     State.OK: ("ok", ""),
     State.FAILS: ("FAILS", "bold red"),
@@ -83,7 +76,11 @@ class View:
         ]
         if section.Ms is not None:
             facts.insert(1, f"Ms = {self._moment(section.Ms, system, signed=True)}")
+        if section.concrete.lightweight < 1.0:
+            facts.append(f"lambda {section.concrete.lightweight:g}")
         self.say(", ".join(facts))
+        if section.steel.note:
+            self.say(f"{section.steel.name}: {section.steel.note}")
 
     def _moment(self, value: float, system: UnitSystem, *, signed: bool = False) -> str:
         size = system.to_trade("moment", value)
@@ -110,13 +107,12 @@ class View:
             self.say()
             return
         number = show or 1
-        chosen = next((item for item in result.layouts if item.rank == number), None)
-        if chosen is None:
-            listed = sum(item.rank is not None for item in result.layouts)
-            self.say(f"There is no line {number}: the list has {listed}.", "bold")
-            chosen = result.layouts[0]
+        if number > len(result.layouts):
+            self.say(f"There is no line {number}: the list has {len(result.layouts)}.", "bold")
+            number = 1
+        chosen = result.layouts[number - 1]
         self.say()
-        self.checked(chosen, f"Line {chosen.rank}: {chosen.checked.layout.label}")
+        self.checked(chosen, f"Line {number}: {chosen.checked.layout.label}")
 
     def table(self) -> Table:
         """Start a table of this program's look."""
@@ -133,12 +129,12 @@ class View:
         table.add_column("layout", min_width=10)
         for name in ("mass", "score", *TERMS, "phiMn", "use", "eps_t", "gap"):
             table.add_column(name, justify="right", no_wrap=True)
-        for rated in result.layouts:
+        for number, rated in enumerate(result.layouts, 1):
             checked = rated.checked
             tightest = min(layer.gap / layer.gap_required for layer in checked.placement.layers)
             self._row_of(
                 table,
-                "+" if rated.rank is None else str(rated.rank),
+                f"{number}+" if rated.rank is None else str(number),
                 "\n".join(layer.label.replace(" + ", "+") for layer in checked.layout.layers),
                 _fixed(checked.layout.mass, 5),
                 _fixed(rated.score.total, 5),
@@ -151,31 +147,17 @@ class View:
         return table
 
     def _proof(self, result: RankedSection) -> None:
-        ranking, system = result.problem.ranking, result.section.edition.system
+        system = result.section.edition.system
         unit = system.trade["mass_per_length"]
         for mark in ("lightest", "fewest bars"):
             best = next((item for item in result.layouts if mark in item.marks), None)
             if best is not None:
-                where = f"line {best.rank}" if best.rank is not None else "shown below the list"
+                where = f"line {result.layouts.index(best) + 1}"
                 self.say(f"{mark} of all: {best.checked.layout.label} ({where})")
-        value = "score" if ranking.by == "practical" else "mass"
-        variety = ""
-        if ranking.per_pattern is not None:
-            variety = (
-                f"; at most {ranking.per_pattern} lines of one largest size and number of layers"
-            )
-        if not result.proved:
-            text = (
-                "NOT PROVED: the work limit stopped the search; better layouts may exist."
-                " Raise work_limit."
-            )
-        elif result.closing_value is None:
-            text = f"Proved: no other layout meets every rule{variety}."
-        else:
-            text = (
-                f"Proved: nothing left out has a {value} below {result.closing_value:.2f}{variety}."
-            )
-        self.say(text, "bold" if not result.proved else "")
+        self.say(proof_of(result), "" if result.proved else "bold")
+        reliance = exemption_of(result)
+        if reliance:
+            self.say(reliance)
         if result.mass_floor is not None:
             floor = f"{result.mass_floor:.2f} {unit}"
             self.say(f"Mass floor, for divisible steel at the best depth: {floor}.")
@@ -232,7 +214,7 @@ class View:
             f"{block.id} ({block.families} of {block.of})" for block in diagnosis.blocked_by
         )
         if blocked:
-            self.say(f"What blocks, in how many families of layouts: {blocked}")
+            self.say(f"What blocks, in how many combinations of sizes and layers: {blocked}")
         strongest = diagnosis.strongest
         if strongest is None:
             self.say("No layout meets the rules other than strength either.")

@@ -17,7 +17,7 @@ def test_all_is_sorted_and_complete() -> None:
 def test_all_holds_what_the_modules_offer() -> None:
     """The package re-exports the public names of all its modules."""
     # By name: the function steel_grades hides the module of that name in the package.
-    modules = ["bars", "errors", "labour", "steel_grades"]
+    modules = ["bars", "errors", "labour", "prices", "steel_grades"]
     offered = [name for module in modules for name in import_module(f"catalogs.{module}").__all__]
     assert sorted(offered) == catalogs.__all__
 
@@ -28,9 +28,11 @@ def test_typing_marker_and_sources_lie_in_the_package() -> None:
     assert package.joinpath("py.typed").is_file()
     sources = package.joinpath("data", "SOURCES.md").read_text(encoding="utf-8")
     tables = [
-        entry.name for entry in package.joinpath("data").iterdir() if entry.name.endswith(".csv")
+        entry.name
+        for entry in package.joinpath("data").iterdir()
+        if entry.name.endswith((".csv", ".toml"))
     ]
-    assert len(tables) == 6
+    assert len(tables) == 10
     assert [name for name in tables if f"| `{name}` |" not in sources] == []
 
 

@@ -100,10 +100,10 @@ def test_failure_keeps_the_old_result(
         opened = os.fdopen
 
         class Full:
-            """A text file that takes a part and then no more."""
+            """A file that takes a part and then no more."""
 
             def __init__(self, handle: int, *_: object, **__: object) -> None:
-                self.file = opened(handle, "w", encoding="utf-8")
+                self.file = opened(handle, "wb")
 
             def __enter__(self) -> Full:
                 return self
@@ -111,8 +111,8 @@ def test_failure_keeps_the_old_result(
             def __exit__(self, *_: object) -> None:
                 self.file.close()
 
-            def write(self, text: str) -> int:
-                self.file.write(text[:100])
+            def write(self, data: bytes) -> int:
+                self.file.write(data[:100])
                 full()
 
         monkeypatch.setattr("optimizer.files.os.fdopen", Full)

@@ -25,6 +25,7 @@ from engine import (
     edition,
     parse_layout,
 )
+from engine.crack_checks import shrinkage_ratio
 from engine.detailing_checks import cover_fits
 from tests.engine.builders import inch_bar, row, si_layout, si_section, us_layout, us_section
 
@@ -141,11 +142,38 @@ def test_net_tensile_strain_of_2014() -> None:
     c = 6 * 60_000 / BLOCK / 0.85
     eps_t = 0.003 * (22 - 0.564 - c) / c
     assert 0.004 < eps_t < 0.005
-    assert (found.state, found.demand) == (State.OK, 0.004)
+    assert (found.clause, found.state, found.demand) == ("9.3.3.1", State.OK, 0.004)
     assert found.limit == pytest.approx(eps_t, rel=1e-9)
     assert checked.phi == pytest.approx(0.65 + 0.25 * (eps_t - 0.002) / 0.003, rel=1e-9)
     assert row(checked, "flexural_strength").note == f"phi = {checked.phi:.3f}"
     assert found.note == "transition, phi reduced; tension-controlled from 0.00500"
+
+
+@pytest.mark.parametrize(
+    ("layer", "state", "verdict"),
+    [
+        ("4 #8", State.OK, "tension-controlled"),
+        ("6 #9", State.FAILS, "transition, phi reduced; tension-controlled from 0.00500"),
+    ],
+)
+def test_more_strain_than_2014_asks_for(layer: str, state: State, verdict: str) -> None:
+    """0.005 is Table 21.2.2's; 9.3.3.1 of ACI 318-14 itself stops at 0.004."""
+    found = row(check_layout(us_section(code="ACI 318-14"), us_layout(layer)), "net_tensile_strain")
+    assert (found.clause, found.state) == ("21.2.2", state)
+    assert found.demand == pytest.approx(0.005)
+    assert found.note.startswith(f"{verdict}; ")
+    assert found.note.endswith("9.3.3.1 permits 0.004 (tension_controlled = false)")
+
+
+def test_more_strain_than_2014_asks_for_in_millimetres() -> None:
+    """The same in ACI 318M-14, and no word of it in ACI 318M-19, where 9.3.3.1 asks for it."""
+    old, new = (
+        row(check_layout(si_section(code=code), si_layout("4 25")), "net_tensile_strain")
+        for code in ("ACI 318M-14", "ACI 318M-19")
+    )
+    assert (old.clause, new.clause) == ("21.2.2", "9.3.3.1")
+    assert "9.3.3.1 permits 0.004" in old.note
+    assert new.note == "tension-controlled"
 
 
 def test_transition_is_refused_in_2019() -> None:
@@ -164,12 +192,32 @@ def test_minimum_steel_met() -> None:
     assert found.note == ""
 
 
-def test_minimum_steel_of_a_flange_in_tension() -> None:
-    """Twice the web of a determinate beam."""
-    section = us_section(outline=T_BEAM, Mu=-3e6, statically_determinate=True)
+@pytest.mark.parametrize(("flange", "width"), [(60.0, 28.0), (20.0, 20.0)])
+def test_minimum_steel_of_a_flange_in_tension(flange: float, width: float) -> None:
+    """A determinate beam counts the lesser of its flange and twice its web, and says so."""
+    outline = Outline(web=14.0, depth=24.0, top=Flange(width=flange, thickness=5.0))
+    section = us_section(outline=outline, Mu=-3e6, statically_determinate=True)
     found = row(check_layout(section, FOUR), "minimum_steel")
-    assert found.demand == pytest.approx(200 * 28 * 21.5 / 60_000)
-    assert (found.state, found.note) == (State.OK, "bw of the flange in tension")
+    assert found.demand == pytest.approx(200 * width * 21.5 / 60_000)
+    assert (found.clause, found.state) == ("9.6.1.2", State.OK)
+    assert found.note == f"bw taken as min(bf, 2 bw) = {width:g} in"
+
+
+def test_minimum_steel_of_a_flange_in_tension_of_a_frame() -> None:
+    """An indeterminate beam counts its web; what changes that is said beside it."""
+    found = row(check_layout(us_section(outline=T_BEAM, Mu=-3e6), FOUR), "minimum_steel")
+    assert found.demand == pytest.approx(200 * 14 * 21.5 / 60_000)
+    assert (found.clause, found.state) == ("9.6.1.2", State.OK)
+    assert found.note == "flange in tension: twice bw counts if the beam is statically determinate"
+
+
+@pytest.mark.parametrize("determinate", [True, False])
+def test_minimum_steel_of_a_flange_in_compression(determinate: bool) -> None:
+    """Only a flange in tension enters 9.6.1.2."""
+    section = us_section(outline=T_BEAM, statically_determinate=determinate)
+    found = row(check_layout(section, FOUR), "minimum_steel")
+    assert found.demand == pytest.approx(200 * 14 * 21.5 / 60_000)
+    assert found.note == ""
 
 
 def small_moment(share: float) -> float:
@@ -178,19 +226,19 @@ def small_moment(share: float) -> float:
 
 
 def test_minimum_steel_by_exemption() -> None:
-    """2 #5 are below 9.6.1.2 and above 4/3 of the required area: 9.6.1.3."""
+    """2 #5 are below 9.6.1.2 and above 4/3 of the required area: 9.6.1.3, if kept to throughout."""
     checked = check_layout(us_section(Mu=small_moment(0.9)), us_layout("2 #5"))
     found = row(checked, "minimum_steel")
     assert checked.As_required is not None
     exempt = 4 / 3 * checked.As_required
-    assert (found.clause, found.state) == ("9.6.1.3", State.OK)
+    assert (found.clause, found.state, found.ok) == ("9.6.1.3", State.PROVIDE, True)
     assert [found.demand, found.limit] == pytest.approx([exempt, 0.62])
     assert found.ratio is not None
     assert found.ratio < 1.0
     # 200 (14) 21.6875/60,000 = 1.0121; 0.9 of the moment needs 0.418 in^2, 4/3 of it 0.5575.
     assert found.note == (
         f"9.6.1.2 asks for 1.012 in^2, 4/3 of the required area is {exempt:.4g} in^2"
-        "; to be kept at every section of the beam"
+        "; the exemption has to hold at every section of the beam"
     )
 
 
@@ -224,9 +272,9 @@ def test_minimum_steel_where_no_area_is_required() -> None:
         (("6 #8",), State.FAILS, 0.6, ""),
         (("9 #8",), State.FAILS, 0.0, ""),
         (("10 #8",), State.FAILS, 8 / 9 - 1, ""),
-        (("4 #8", "2 #8"), State.OK, 5 / 3, "layer 1 is the tightest"),
-        (("6 #8", "2 #8"), State.FAILS, 0.6, "layer 1 is the tightest"),
-        (("4 #6", "4 #8"), State.OK, 5 / 3, "layer 2 is the tightest"),
+        (("4 #8", "2 #8"), State.OK, 5 / 3, "; layer 1 is the tightest"),
+        (("6 #8", "2 #8"), State.FAILS, 0.6, "; layer 1 is the tightest"),
+        (("4 #6", "4 #8"), State.OK, 5 / 3, "; layer 2 is the tightest"),
     ],
 )
 def test_clear_gap(layers: tuple[str, ...], state: State, gap: float, note: str) -> None:
@@ -238,6 +286,47 @@ def test_clear_gap(layers: tuple[str, ...], state: State, gap: float, note: str)
         assert found.ratio == pytest.approx(1.0 / gap, rel=1e-9)
     elif gap < 0.0:
         assert found.ratio is None
+    assert found.note == f"1 in governs{note}"
+
+
+@pytest.mark.parametrize(
+    ("changes", "layers", "required", "note"),
+    [
+        ({}, ("2 #7",), 1.0, "1 in governs"),
+        ({}, ("2 #9",), 1.128, "db governs"),
+        ({}, ("2 #9 + 2 #7",), 1.128, "db governs"),
+        ({"aggregate": 1.5}, ("2 #9",), 2.0, "4/3 of the aggregate governs"),
+        ({"aggregate": 0.8}, ("2 #9",), 1.128, "db governs"),
+        ({"min_gap": 1.5}, ("2 #9",), 1.5, "min_gap of the job, more than 25.2.1 asks"),
+        ({"min_gap": 1.1}, ("2 #9",), 1.128, "db governs"),
+        ({"min_gap": 1.5, "aggregate": 1.5}, ("2 #9",), 2.0, "4/3 of the aggregate governs"),
+        # Layer 1 has (8 - 3 x 1.27)/3 in for 1.27 in, layer 2 all of 8 in less a bar.
+        ({}, ("4 #10", "2 #7"), 1.27, "db governs; layer 1 is the tightest"),
+    ],
+)
+def test_what_governs_the_clear_gap(
+    changes: dict[str, Any], layers: tuple[str, ...], required: float, note: str
+) -> None:
+    """25.2.1 is the largest of 1 in, db and 4/3 of the aggregate; the job may ask for more."""
+    found = row(check_layout(us_section(**changes), us_layout(*layers)), "clear_gap")
+    assert found.demand == pytest.approx(required)
+    assert found.note == note
+
+
+@pytest.mark.parametrize(
+    ("aggregate", "layer", "required", "note"),
+    [
+        (18.0, "3 25", 25.4, "db governs"),
+        (18.0, "3 22", 25.0, "25 mm governs"),
+        (20.0, "3 25", 80 / 3, "4/3 of the aggregate governs"),
+    ],
+)
+def test_what_governs_the_clear_gap_in_millimetres(
+    aggregate: float, layer: str, required: float, note: str
+) -> None:
+    """The same with 25 mm for 1 in."""
+    found = row(check_layout(si_section(aggregate=aggregate), si_layout(layer)), "clear_gap")
+    assert found.demand == pytest.approx(required)
     assert found.note == note
 
 
@@ -275,6 +364,15 @@ def test_layer_gap() -> None:
             "layer 2 cannot stand on the bars of the layer below (25.2.2)",
         ),
         (("1 #9 + 1 #8",), "25.2.2", State.OK, "layer 1 is not symmetric"),
+        (("4 #8", "3 #8"), "25.2.2", State.OK, "layer 2 is not symmetric"),
+        (
+            ("4 #8", "3 #8", "3 #8"),
+            "25.2.2",
+            State.OK,
+            "layer 2 is not symmetric; layer 3 is not symmetric",
+        ),
+        # Over an odd layer that stands to one side the corners are in line again.
+        (("4 #8", "3 #8", "2 #8"), "25.2.2", State.OK, "layer 2 is not symmetric"),
         (
             ("4 #6", "2 #8"),
             "25.2.2",
@@ -285,8 +383,8 @@ def test_layer_gap() -> None:
             ("2 #8", "1 #9"),
             "25.7.1.2",
             State.FAILS,
-            "layer 2 leaves a stirrup corner without a bar (25.7.1.2); layer 2 cannot stand on the"
-            " bars of the layer below (25.2.2); layer 2 has larger bars than the layer below",
+            "layer 2 leaves a stirrup corner without a bar (25.7.1.2); layer 2 is not symmetric;"
+            " layer 2 has larger bars than the layer below",
         ),
     ],
 )
@@ -475,27 +573,36 @@ def test_flange_steel_without_a_flange_in_tension(outline: Outline, moment: floa
 
 
 @pytest.mark.parametrize(
-    ("span", "note"),
+    ("span", "state", "note"),
     [
-        (None, "the lesser of be = 60 in and ln/10 (ln not given)"),
-        (600.0, "60 in (lesser of be and ln/10)"),
+        (
+            None,
+            State.PROVIDE,
+            ", and where it exceeds ln/10 (ln not given) bonded bars in the outer flange",
+        ),
+        (601.0, State.OK, " does not exceed ln/10 = 60.1 in"),
+        (600.0, State.OK, " does not exceed ln/10 = 60 in"),
         # Outer flange: 60 - 30 = 30 in, 0.0018 (30) 5 = 0.27 in^2.
         (
             300.0,
-            "30 in (lesser of be and ln/10); ln/10 governs: in the outer flange also bonded bars of"
-            " 0.27 in^2 in all",
+            State.PROVIDE,
+            " exceeds ln/10 = 30 in: bonded bars of 0.27 in^2 in all in the outer flange"
+            " (24.4.3.2)",
         ),
         # ln/10 below the web: outside the web 60 - 14 = 46 in, 0.0018 (46) 5 = 0.414 in^2.
         (
             120.0,
-            "12 in (lesser of be and ln/10); ln/10 governs: in the outer flange also bonded bars of"
-            " 0.414 in^2 in all",
+            State.PROVIDE,
+            " exceeds ln/10 = 12 in: bonded bars of 0.414 in^2 in all in the outer flange"
+            " (24.4.3.2)",
         ),
     ],
 )
 @pytest.mark.parametrize("sagging", [True, False])
-def test_flange_steel_in_tension(span: float | None, note: str, sagging: bool) -> None:
-    """Bars beyond the web over min(be, ln/10), and in the outer flange 0.0018 of its area."""
+def test_flange_steel_in_tension(
+    span: float | None, state: State, note: str, sagging: bool
+) -> None:
+    """Bars over the web do up to be = ln/10; beyond, the outer flange has 0.0018 of its area."""
     flange = Flange(width=60.0, thickness=5.0)
     outline = (
         Outline(web=14.0, depth=24.0, bottom=flange)
@@ -504,17 +611,79 @@ def test_flange_steel_in_tension(span: float | None, note: str, sagging: bool) -
     )
     section = us_section(outline=outline, Mu=3e6 if sagging else -3e6, clear_span=span)
     found = row(check_layout(section, FOUR), "flange_steel")
+    assert (found.clause, found.state, found.ok) == ("24.3.4", state, True)
+    assert found.note == f"all bars lie over the web; be = 60 in{note}"
+
+
+@pytest.mark.parametrize(
+    ("code", "fy", "area"),
+    [
+        ("ACI 318-14", 40_000.0, "0.3"),  # 0.0020 (30) 5
+        ("ACI 318-14", 75_000.0, "0.216"),  # 0.00144 (30) 5
+        ("ACI 318-19", 40_000.0, "0.27"),  # 0.0018 (30) 5
+    ],
+)
+def test_flange_steel_by_edition_and_grade(code: str, fy: float, area: str) -> None:
+    """The outer flange's steel takes the ratio of its edition and grade."""
+    section = us_section(code=code, fy=fy, outline=T_BEAM, Mu=-3e6, clear_span=300.0)
+    found = row(check_layout(section, FOUR), "flange_steel")
+    assert f"bonded bars of {area} in^2 in all" in found.note
+
+
+def test_flange_steel_in_millimetres() -> None:
+    """ACI 318M-19: be 1500, ln/10 = 800 mm, 0.0018 (700) 120 = 151.2 mm^2."""
+    outline = Outline(web=350.0, depth=600.0, top=Flange(width=1500.0, thickness=120.0))
+    section = si_section(outline=outline, Mu=-300e6, clear_span=8000.0)
+    found = row(check_layout(section, si_layout("4 25")), "flange_steel")
     assert found.state is State.PROVIDE
     assert found.note == (
-        f"bars over the web only; tension bars beyond it are to be spread over {note}"
+        "all bars lie over the web; be = 1500 mm exceeds ln/10 = 800 mm:"
+        " bonded bars of 151.2 mm^2 in all in the outer flange (24.4.3.2)"
     )
+
+
+@pytest.mark.parametrize(
+    ("code", "fy", "ratio"),
+    [
+        ("ACI 318-14", 40_000.0, 0.0020),
+        ("ACI 318-14", 59_999.0, 0.0020),
+        ("ACI 318-14", 60_000.0, 0.0018),
+        ("ACI 318-14", 75_000.0, 0.00144),
+        ("ACI 318-14", 80_000.0, 0.0014),  # 0.00135 is below the floor
+        ("ACI 318-19", 40_000.0, 0.0018),
+        ("ACI 318-19", 60_000.0, 0.0018),
+        ("ACI 318-19", 100_000.0, 0.0018),
+    ],
+)
+def test_shrinkage_ratio(code: str, fy: float, ratio: float) -> None:
+    """24.4.3.2: 0.0018 in 2019; in 2014, from memory, it falls with the grade to 0.0014."""
+    assert shrinkage_ratio(us_section(code=code, fy=fy)) == pytest.approx(ratio, rel=1e-12)
+
+
+@pytest.mark.parametrize(
+    ("code", "fy", "ratio"),
+    [
+        ("ACI 318M-14", 280.0, 0.0020),
+        ("ACI 318M-14", 420.0, 0.0018),
+        ("ACI 318M-14", 500.0, 0.0018 * 420 / 500),
+        ("ACI 318M-14", 550.0, 0.0014),  # 0.001375 is below the floor
+        ("ACI 318M-19", 280.0, 0.0018),
+        ("ACI 318M-19", 690.0, 0.0018),
+    ],
+)
+def test_shrinkage_ratio_in_megapascals(code: str, fy: float, ratio: float) -> None:
+    """The same about Grade 420; 2014 from memory."""
+    assert shrinkage_ratio(si_section(code=code, fy=fy)) == pytest.approx(ratio, rel=1e-12)
 
 
 @pytest.mark.parametrize(
     ("opposite", "state", "gap", "note"),
     [
-        (["2 #5"], State.OK, 8 - 0.625, ""),
-        (["8 #5"], State.FAILS, 8 / 7 - 0.625, ""),
+        (["2 #5"], State.OK, 8 - 0.625, "1 in governs"),
+        (["2 #9"], State.OK, 8 - 1.128, "db governs"),
+        (["8 #5"], State.FAILS, 8 / 7 - 0.625, "1 in governs"),
+        # On the lines of the layer below, half from each side.
+        (["4 #5", "3 #5"], State.OK, 8 / 3 - 0.625, "1 in governs; layer 1 is the tightest"),
         (
             ["1 #5"],
             State.FAILS,
@@ -525,7 +694,8 @@ def test_flange_steel_in_tension(span: float | None, note: str, sagging: bool) -
             ["2 #5", "3 #5"],
             State.FAILS,
             4 - 0.625,
-            "layer 2 is the tightest; layer 2 cannot stand on the bars of the layer below (25.2.2)",
+            "1 in governs; layer 2 is the tightest;"
+            " layer 2 cannot stand on the bars of the layer below (25.2.2)",
         ),
     ],
 )
@@ -544,7 +714,7 @@ def test_opposite_bars_with_too_little_cover() -> None:
     )
     found = row(check_layout(section, us_layout("3 #5")), "opposite_bars")
     assert found.state is State.FAILS
-    assert found.note == f"too little cover ({section.edition.cover_clause})"
+    assert found.note == f"1 in governs; too little cover ({section.edition.cover_clause})"
 
 
 def test_no_opposite_bars() -> None:

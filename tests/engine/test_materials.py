@@ -106,7 +106,7 @@ def test_yield_strain(fy: float, code: str, eps_ty: float) -> None:
 def test_concrete_strength_out_of_range(fc: float, code: str, allowed: str) -> None:
     """4 psi concrete is a slip of the unit."""
     with pytest.raises(
-        OutOfRangeError, match=rf"{fc:g} \w+; allowed: {allowed} \(19\.2\.1\.1\)$"
+        OutOfRangeError, match=rf"{fc:g} \w+; allowed: {allowed} \(19\.2\.1\.1; own limits\)$"
     ) as caught:
         concrete(fc, code)
     assert caught.value.what == "fc"
@@ -126,10 +126,20 @@ def test_concrete_strength_out_of_range(fc: float, code: str, allowed: str) -> N
 def test_yield_strength_out_of_range(fy: float, code: str, allowed: str) -> None:
     """Table 20.2.2.4(a) ends flexure at 80 ksi (550 MPa) in 2014, 100 ksi (690 MPa) in 2019."""
     with pytest.raises(
-        OutOfRangeError, match=rf"{fy:.6g} \w+; allowed: {allowed} \({code} 20\.2\.2\.4\)$"
+        OutOfRangeError,
+        match=rf"{fy:.6g} \w+; allowed: {allowed} \({code} 20\.2\.2\.4; own limits\)$",
     ) as caught:
         Steel(edition=edition(code), fy=fy)
     assert caught.value.what == "fy"
+
+
+def test_name_and_note_of_a_grade() -> None:
+    """Both are words for a reader: none unless given, and no figure depends on them."""
+    plain = Steel(edition=edition("ACI 318-19"), fy=60_000.0)
+    named = Steel(edition=edition("ACI 318-19"), fy=60_000.0, name="Grade 60", note="low alloy")
+    assert (plain.name, plain.note) == ("", "")
+    assert (named.name, named.note) == ("Grade 60", "low alloy")
+    assert (named.Es, named.eps_ty) == (plain.Es, plain.eps_ty)
 
 
 @pytest.mark.parametrize("code", CODES)
@@ -145,7 +155,7 @@ def test_lightweight_factor_out_of_range(value: float) -> None:
     """19.2.4: lambda is between 0.75 and 1; it has no unit to print."""
     with pytest.raises(
         OutOfRangeError,
-        match=rf"\b{value:g}; allowed: 0\.75 to 1 \(19\.2\.4\)$",
+        match=rf"\b{value:g}; allowed: 0\.75 to 1 \(19\.2\.4; own limits\)$",
     ) as caught:
         Concrete(edition=edition("ACI 318-19"), fc=4000.0, lightweight=value)
     assert caught.value.what == "lightweight"
@@ -156,7 +166,8 @@ def test_concrete_modulus_out_of_range(share: float) -> None:
     """A modulus far from that of normalweight concrete is a slip of the unit."""
     modulus = share * 57_000 * math.sqrt(4000)
     with pytest.raises(
-        OutOfRangeError, match=r"psi; allowed: 1081499 to 7209993 psi \(19\.2\.2\.1\)$"
+        OutOfRangeError,
+        match=r"psi; allowed: 1081499 to 7209993 psi \(19\.2\.2\.1; own limits\)$",
     ) as caught:
         Concrete(edition=edition("ACI 318-19"), fc=4000.0, modulus=modulus)
     assert caught.value.what == "Ec"

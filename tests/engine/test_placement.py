@@ -116,9 +116,9 @@ def test_third_layer_stands_on_the_second() -> None:
     "layers",
     [
         ("2 #8", "3 #8"),  # more bars than lines
-        ("4 #8", "3 #8"),  # no line at the centre
-        ("4 #8", "1 #8"),
+        ("4 #8", "5 #8"),
         ("2 #8", "2 #18"),  # too thick to stand over the corner bars
+        ("4 #8", "3 #18"),
     ],
 )
 def test_layer_that_cannot_stack(layers: tuple[str, str]) -> None:
@@ -130,12 +130,43 @@ def test_layer_that_cannot_stack(layers: tuple[str, str]) -> None:
     assert placed.x == alone.x
 
 
+@pytest.mark.parametrize(
+    ("layers", "x"),
+    [
+        (("4 #8", "3 #8"), (-4.0, -4 / 3, 4.0)),  # no line at the centre
+        (("4 #8", "1 #8"), (-4.0,)),
+        (("2 #8", "1 #8"), (-4.0,)),
+        # Lines 1.6 apart.
+        (("6 #6", "5 #6"), (-4.0, -2.4, -0.8, 2.4, 4.0)),
+        (("6 #6", "3 #6"), (-4.0, -2.4, 4.0)),
+        # A layer over one that stands to one side keeps to the lines that are left.
+        (("4 #8", "3 #8", "3 #8"), (-4.0, -4 / 3, 4.0)),
+        (("4 #8", "3 #8", "2 #8"), (-4.0, 4.0)),
+        (("4 #8", "1 #8", "1 #8"), (-4.0,)),
+    ],
+)
+def test_layer_that_cannot_be_symmetric(layers: tuple[str, ...], x: tuple[float, ...]) -> None:
+    """It stands on lines of the layer below, half from each side, the odd bar from the left."""
+    *_, below, placed = place(us_section(), us_layout(*layers)).layers
+    np.testing.assert_allclose(placed.x, x, atol=1e-12)
+    assert placed.aligned
+    assert set(placed.x) <= set(below.x)
+
+
+def test_gap_of_a_layer_that_cannot_be_symmetric() -> None:
+    """3 #8 over 4 #8: the pair on neighbouring lines is the tightest, the other the widest."""
+    placed = place(us_section(), us_layout("4 #8", "3 #8")).layers[1]
+    assert placed.gap == pytest.approx(8 / 3 - 1, rel=1e-12)
+    assert placed.spacing == pytest.approx(16 / 3, rel=1e-12)
+
+
 def test_layer_over_an_asymmetric_one() -> None:
-    """3 #9 + 1 #5 stand unevenly: bars that keep to the lines, or a layer that is marked."""
-    lower, upper = place(us_section(), us_layout("3 #9 + 1 #5", "4 #5")).layers
+    """3 #9 + 1 #5 stand unevenly; 4 #5 stand on the same lines, 2 #5 on the corner ones."""
+    lower, upper, third = place(us_section(), us_layout("3 #9 + 1 #5", "4 #5", "2 #5")).layers
     assert lower.designations == ("#9", "#9", "#5", "#9")
-    on_lines = all(min(abs(x - line) for line in lower.x) < 1e-9 for x in upper.x)
-    assert upper.aligned == on_lines
+    assert lower.x[1] != pytest.approx(-lower.x[2])
+    assert (upper.x, upper.aligned) == (lower.x, True)
+    assert (third.x, third.aligned) == ((lower.x[0], lower.x[-1]), True)
 
 
 def test_asymmetric_layer() -> None:

@@ -62,13 +62,13 @@ def test_bars_in_number_and_mirrored(
 
 @pytest.mark.parametrize("ink", [UNICODE, ASCII], ids=["unicode", "ascii"])
 def test_bars_of_both_faces(ink: Ink) -> None:
-    """Bars opposite are drawn at the other face, the largest size of the layout filled."""
+    """Bars opposite are drawn at the other face with a mark of their own."""
     checked = drawn("3 #9", "2 #7", opposite=us_layout("2 #5"))
     lines = draw(checked, ink)
     assert [len(row) for row in bars_of(checked, ink)] == [2, 2, 3]
-    large, small = ink.bars[0], ink.bars[1]
+    large, small, opposite = ink.bars
     body = "\n".join(line.split("  layer")[0].split("  opposite")[0] for line in lines[:-1])
-    assert (body.count(large), body.count(small)) == (3, 4)
+    assert (body.count(large), body.count(small), body.count(opposite)) == (3, 2, 2)
     notes = [line for line in lines if "gap" in line]
     assert [note.split(":")[0].split()[-1] for note in notes] == ["opposite", "2", "1"]
 

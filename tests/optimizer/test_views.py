@@ -64,9 +64,9 @@ def test_heading_of_a_section(known: RankedSection) -> None:
 
 
 def test_proof_of_a_list_that_holds_everything(known: RankedSection) -> None:
-    """A list shorter than its length says that no other layout meets every rule."""
+    """A list shorter than its length says that no other kind of layout meets every rule."""
     text = " ".join(shown(known).split())
-    assert "Proved: no other layout meets every rule" in text
+    assert "Proved: no other kind of layout meets every rule" in text
     assert "NOT PROVED" not in text
     assert "lightest of all: 4 #8 (line 1)" in text
     assert "fewest bars of all: 4 #8 (line 1)" in text

@@ -1,0 +1,76 @@
+"""Sentences that every report shares: what is proved, what is not checked, the caution."""
+
+from __future__ import annotations
+
+from optimizer.results import RankedSection
+
+NOT_CHECKED = (
+    "Not checked: shear, torsion, deflection, cut-offs and anchorage, axial force, isolated"
+    " T-sections (6.3.2.2), aggregate against form and slab, lateral bracing, seismic detailing,"
+    " fire, corrosion, fatigue."
+)
+CAUTION = (
+    "For review by a licensed design professional. The local code and the authority having"
+    " jurisdiction govern."
+)
+
+
+def proof_of(result: RankedSection) -> str:
+    """Say what the search has proved about a short list.
+
+    Parameters
+    ----------
+    result : RankedSection
+        Section with a short list.
+
+    Returns
+    -------
+    str
+        One paragraph.
+    """
+    ranking = result.problem.ranking
+    if not result.proved:
+        return (
+            "NOT PROVED: the work limit stopped the search; better layouts may exist."
+            " Raise work_limit."
+        )
+    value = "score" if ranking.by == "practical" else "mass"
+    of_kind = variety = ""
+    if ranking.per_pattern is not None:
+        of_kind = " of another kind"
+        variety = (
+            " Variety: of layouts with one largest size and number of layers the best"
+            f" {ranking.per_pattern} are listed; others of that kind are left out for that reason"
+            ' alone (variety = "off" lists them).'
+        )
+    if result.closing_value is None:
+        other = "no other kind of layout" if variety else "no other layout"
+        return f"Proved: {other} meets every rule.{variety}"
+    closing = f"{result.closing_value:.2f}"
+    return f"Proved: nothing{of_kind} left out has a {value} below {closing}.{variety}"
+
+
+def exemption_of(result: RankedSection) -> str:
+    """Say which lines rely on the exemption from minimum steel.
+
+    Parameters
+    ----------
+    result : RankedSection
+        Section with a short list.
+
+    Returns
+    -------
+    str
+        One sentence; empty if none does.
+    """
+    lines = [
+        str(number)
+        for number, item in enumerate(result.layouts, 1)
+        if any(row.clause == "9.6.1.3" for row in item.checked.checks)
+    ]
+    if not lines:
+        return ""
+    return (
+        f"Relying on 9.6.1.3 (less steel than 9.6.1.2 asks, but 4/3 of what strength needs, at"
+        f" every section of the beam): line {', '.join(lines)}."
+    )
