@@ -68,7 +68,7 @@ def net_tensile_strain(section: Section, found: Assessed) -> Check:
     if section.edition.year == 2014 and section.tension_controlled:
         # 318-14 itself stops at 0.004; more is what the job asks for.
         clause = "21.2.2"
-        note += "; asked for by the job, 9.3.3.1 permits 0.004 (tension_controlled = false)"
+        note += "; 9.3.3.1 permits 0.004 (tension_controlled = false)"
     return Check(
         id="net_tensile_strain",
         clause=clause,
@@ -106,7 +106,7 @@ def minimum_steel(section: Section, found: Assessed, required: float | None) -> 
         if web_for_minimum(section) != web:
             note = f"bw taken as min(bf, 2 bw) = {plain(web_for_minimum(section))} {unit_in}"
         elif section.profile.tension_width > web:
-            note = "flange in tension: twice bw counts if the beam is statically determinate"
+            note = "flange in tension: min(bf, 2 bw) counts if the beam is statically determinate"
         else:
             note = ""
         clause, demand, state = "9.6.1.2", least, State.OK

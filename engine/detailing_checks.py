@@ -49,20 +49,20 @@ def gap_row(row_id: str, section: Section, placement: Placement) -> Check:
         limit=layer.gap,
         ratio=ratio_of(layer.gap_required, layer.gap),
         state=verdict(gap_fits(layer.gap, layer.gap_required)),
-        note=_governing(section, layer.gap_required)
+        note=_governing(section, layer.gap_required, max(layer.diameters))
         + (f"; layer {number} is the tightest" if len(placement.layers) > 1 else ""),
     )
 
 
-def _governing(section: Section, required: float) -> str:
+def _governing(section: Section, required: float, diameter: float) -> str:
     """Which of the terms of a required gap is the largest."""
-    if section.min_gap > 0.0 and gap_fits(section.min_gap, required):
-        return "min_gap of the job, more than 25.2.1 asks"
     if gap_fits(section.edition.least_gap, required):
         return f"{plain(section.edition.least_gap)} {section.length_unit} governs"
     if gap_fits(4.0 / 3.0 * section.aggregate, required):
         return "4/3 of the aggregate governs"
-    return "db governs"
+    if gap_fits(diameter, required):
+        return "db governs"
+    return "min_gap of the job, more than 25.2.1 asks"
 
 
 def layer_gap(section: Section, layout: Layout) -> Check:

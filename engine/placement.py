@@ -11,13 +11,14 @@ from bisect import bisect_left
 from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import lru_cache
-from itertools import combinations, pairwise
+from itertools import combinations, islice, pairwise
 
 from engine.layouts import Layer, Layout
 from engine.sections import Section
 
 _TIE = 1e-9  # gaps closer than this are the same gap [in or mm]
 
+_MOST_CHOICES = 20_000  # of lines for an asymmetric layer; only drawn layouts have such
 _SYMMETRY = 1e-6  # lines further off their mirror image are not symmetric [in or mm]
 
 
@@ -145,8 +146,8 @@ def place(section: Section, layout: Layout) -> Placement:
         if number == 0:
             x = equal_gaps(diameters, reach)
         else:
-            chosen = stack(lines, diameters) or _stand(lines, len(diameters))
-            aligned = chosen is not None and chosen[-1] <= reach + _TIE
+            chosen = stack(lines, diameters) or _stand(lines, diameters)
+            aligned = chosen is not None and max(map(abs, (chosen[0], chosen[-1]))) <= reach + _TIE
             x = chosen if chosen is not None and aligned else equal_gaps(diameters, reach)
         placed.append(_measure(section, order, x, bottom, aligned))
         lines = x
@@ -154,12 +155,20 @@ def place(section: Section, layout: Layout) -> Placement:
     return Placement(tuple(placed))
 
 
-def _stand(lines: tuple[float, ...], count: int) -> tuple[float, ...] | None:
-    """Lines for a layer that cannot be symmetric over them: half of them from each side."""
-    if count > len(lines):
+def _stand(lines: tuple[float, ...], diameters: tuple[float, ...]) -> tuple[float, ...] | None:
+    """Lines for a layer that cannot be symmetric over them: of the choices that keep both
+    outermost lines the one with the largest smallest gap.
+    """
+    between = len(diameters) - 2
+    if len(diameters) > len(lines):
         return None
-    right = count // 2
-    return (*lines[: count - right], *(lines[len(lines) - right :] if right else ()))
+    if between < 0:
+        return lines[:1]
+    choices = (
+        (lines[0], *inner, lines[-1])
+        for inner in islice(combinations(lines[1:-1], between), _MOST_CHOICES)
+    )
+    return max(choices, key=lambda x: min(clear_gaps(x, diameters)))
 
 
 def _measure(

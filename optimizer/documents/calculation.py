@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from engine import Check, CheckedLayout
-from optimizer.documents import detailing_lines, strength_lines
+from optimizer.documents import detailing_lines, minimum_lines, strength_lines
 from optimizer.documents.forces import BarForce, forces
 from optimizer.documents.lines import Line, Part
 from optimizer.documents.wording import Figures, check_line, heading, visible
@@ -45,16 +45,14 @@ def worked_check(checked: CheckedLayout) -> Calculation:
     parts = [
         Part(title="Equilibrium at crushing", lines=strength_lines.equilibrium(checked, found)),
         Part(title="Design strength", lines=strength_lines.strength(checked, found)),
-        Part(title="Minimum steel", lines=strength_lines.minimum(checked)),
+        Part(title="Minimum steel", lines=minimum_lines.minimum(checked)),
         Part(title="Places of the bars", lines=detailing_lines.places(checked)),
         Part(title="Crack control", lines=detailing_lines.cracks(checked, found)),
         Part(title="Cover", lines=detailing_lines.covers(checked)),
     ]
     told = {line.check for part in parts for line in part.lines}
     rest = [row for row in checked.checks if row.id not in told]
-    if rest:
-        lines = tuple(_as_line(row, figures) for row in rest)
-        parts.append(Part(title="Further rules", lines=lines))
+    parts.append(Part(title="Further rules", lines=tuple(_as_line(row, figures) for row in rest)))
     return Calculation(
         bars=tuple(_bar_row(bar, figures) for bar in found.bars),
         parts=tuple(part for part in parts if part.lines),
@@ -69,6 +67,7 @@ def _as_line(row: Check, figures: Figures) -> Line:
         subject=heading(row.id),
         clause=row.clause,
         numbers=sizes,
+        equal=False,
         note=texts.note,
         state=row.state,
         check=row.id,

@@ -4,15 +4,17 @@ from __future__ import annotations
 
 from itertools import pairwise
 
-from engine import CheckedLayout
+from engine import Check, CheckedLayout
 from engine.check_row import verdict
 from engine.crack_control import WITHOUT_ANALYSIS
 from engine.placement import PlacedLayer, clear_gaps, gap_fits
 from engine.sections import Section
 from engine.units import plain
 from optimizer.documents.forces import Forces, cracked
-from optimizer.documents.lines import Line, row_of
+from optimizer.documents.lines import Line, compared, row_of
 from optimizer.documents.wording import Figures, visible
+
+_CENTRE = 1e-9  # lines nearer the centreline are on it [in or mm]
 
 
 def places(checked: CheckedLayout) -> tuple[Line, ...]:
@@ -41,9 +43,8 @@ def places(checked: CheckedLayout) -> tuple[Line, ...]:
             Line(
                 subject="Clear gap between layers",
                 clause=layer_row.clause,
-                formula=f"at least {figures.length(least)}",
-                numbers=f"{figures.length(given)} given",
-                result=figures.length(given),
+                formula=f"gap given, at least {figures.length(least)}",
+                result=compared(given, least, figures.unit("length"), least=True, ok=layer_row.ok),
                 note=layer_row.note,
                 state=layer_row.state,
                 check="layer_gap",
@@ -74,7 +75,7 @@ def _gap_lines(section: Section, number: int, layer: PlacedLayer) -> list[Line]:
         subject=f"Layer {number}, tightest clear gap",
         clause="25.2.1",
         formula="x_{right} − x_{left} − (d_{b,left} + d_{b,right})/2",
-        numbers=f"{_signed(right)} − ({_signed(left)}) − ({plain(d_left)} + {plain(d_right)})/2",
+        numbers=f"{_signed(right)} − {_bracketed(left)} − ({plain(d_left)} + {plain(d_right)})/2",
         result=figures.length(layer.gap),
         note="equal gaps; x from the centreline of the web"
         if number == 1
@@ -82,20 +83,26 @@ def _gap_lines(section: Section, number: int, layer: PlacedLayer) -> list[Line]:
     )
     least, aggregate = plain(section.edition.least_gap), plain(section.aggregate)
     own = f", {plain(section.min_gap)}" if section.min_gap > 0.0 else ""
+    fits = gap_fits(layer.gap, layer.gap_required)
     asked = Line(
         subject=f"Layer {number}, least clear gap",
         clause="25.2.1",
         formula=f"max({least}, d_{{b}}, 4/3 d_{{agg}}{', min_gap of the job' if own else ''})",
         numbers=f"max({least}, {plain(max(d_left, d_right))}, 4/3 × {aggregate}{own})",
-        result=f"{figures.length(layer.gap_required)}, {figures.length(layer.gap)} there",
-        state=verdict(gap_fits(layer.gap, layer.gap_required)),
+        result=compared(layer.gap, layer.gap_required, figures.unit("length"), least=True, ok=fits),
+        state=verdict(fits),
         check="clear_gap",
     )
     return [reach, between, asked] if number == 1 else [between, asked]
 
 
 def _signed(value: float) -> str:
-    return plain(value).replace("-", "−")
+    # The line of the centre is found by subtraction: what is left of rounding is no figure.
+    return plain(value if abs(value) > _CENTRE else 0.0).replace("-", "−")
+
+
+def _bracketed(value: float) -> str:
+    return f"({_signed(value)})" if value < 0.0 else _signed(value)
 
 
 def cracks(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
@@ -140,20 +147,24 @@ def cracks(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
         result=figures.length(checked.largest_spacing),
         note="c_{c}: least distance from the bars' surface to the tension face",
     )
-    there = "" if row.demand is None else figures.length(row.demand)
     provided = Line(
         subject="Spacing there, centre to centre"
         if row.clause == "24.3.2"
         else "One bar: width of the tension face",
         clause=row.clause,
-        formula="at most s",
-        numbers=f"{there}, at most {figures.length(checked.largest_spacing)}",
-        result=there,
+        formula="spacing, at most s",
+        result=_spacing(checked, row, figures),
         note=visible(row.note),
         state=row.state,
         check="crack_control",
     )
     return (*stress, spacing, provided)
+
+
+def _spacing(checked: CheckedLayout, row: Check, figures: Figures) -> str:
+    spacing = 0.0 if row.demand is None else row.demand
+    unit = figures.unit("length")
+    return compared(spacing, checked.largest_spacing, unit, least=False, ok=row.ok)
 
 
 def _service_lines(checked: CheckedLayout, found: Forces, moment: float) -> tuple[Line, ...]:
@@ -175,10 +186,11 @@ def _service_lines(checked: CheckedLayout, found: Forces, moment: float) -> tupl
         ),
         Line(
             subject="Cracked section, neutral axis and inertia",
-            formula="S_{c}(x) = Σ n A_{i} (d_{i} − x);  I_{cr} = I_{c}(x) + Σ n A_{i} (d_{i} − x)^{2}",
+            formula="S_{c} = Σ n A_{i} (d_{i} − x); I_{cr} = I_{c} + Σ n A_{i} (d_{i} − x)^{2}",
             numbers="n A for bars in tension, (n − 1) A for counted bars opposite"
             if section.count_opposite
             else "concrete in compression only",
+            equal=False,
             result=f"x = {figures.length(x)}, I_{{cr}} = {plain(inertia)} {length}^{{4}}",
         ),
         Line(
@@ -213,9 +225,8 @@ def covers(checked: CheckedLayout) -> tuple[Line, ...]:
         Line(
             subject="Clear cover",
             clause=row.clause,
-            formula="cover given ≥ cover of the table",
-            numbers=f"{figures.length(given)}, at least {figures.length(required)}",
-            result=figures.length(given),
+            formula="cover given, at least that of the table",
+            result=compared(given, required, figures.unit("length"), least=True, ok=row.ok),
             note=visible(row.note),
             state=row.state,
             check="cover",

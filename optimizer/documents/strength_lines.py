@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
-import math
+from itertools import accumulate
 
 import numpy as np
 
 from engine import CheckedLayout, Section
 from engine.materials import BLOCK, EPS_CU
-from engine.minimum_steel import minimum_area, web_for_minimum
 from engine.strength_reduction import (
     PHI_COMPRESSION,
     PHI_TENSION,
@@ -17,8 +16,8 @@ from engine.strength_reduction import (
 )
 from engine.units import plain
 from optimizer.documents.forces import Forces, yields
-from optimizer.documents.lines import Line, row_of
-from optimizer.documents.wording import Figures, visible
+from optimizer.documents.lines import Line, compared, row_of
+from optimizer.documents.wording import Figures
 
 
 def equilibrium(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
@@ -92,6 +91,7 @@ def _block(checked: CheckedLayout, found: Forces, figures: Figures) -> tuple[Lin
             numbers=f"{figures.of('force', found.steel)} = {BLOCK:g} × {plain(section.concrete.fc)}"
             f" × ({plain(found.block_area)} − {plain(found.displaced)})"
             f" = {figures.of('force', found.concrete)}",
+            equal=False,
             result=f"c = {figures.length(checked.c)}",
             note="c is the depth at which both sides are equal, found by iteration; forces of the"
             " bars in the table below",
@@ -146,12 +146,13 @@ def _block(checked: CheckedLayout, found: Forces, figures: Figures) -> tuple[Lin
 
 def _strip_of(section: Section, a: float) -> tuple[float, float]:
     """Upper edge and width of the strip that a depth lies in."""
-    edge = 0.0
-    for width, height in section.profile.strips:
-        if a <= edge + height:
-            return edge, width
-        edge += height
-    return edge - height, width
+    strips = section.profile.strips
+    edges = accumulate((height for _, height in strips), initial=0.0)
+    return next(
+        (edge, width)
+        for edge, (width, height) in zip(edges, strips, strict=False)
+        if a <= edge + height
+    )
 
 
 def strength(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
@@ -195,7 +196,7 @@ def strength(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
             clause=strain_row.clause,
             formula="ε_{t} = 0.003 (d_{t} − c) / c",
             numbers=f"{EPS_CU:g} ({plain(checked.dt)} − {plain(checked.c)}) / {plain(checked.c)}",
-            result=f"{checked.eps_t:.5f}, at least {limit:.5f}",
+            result=f"{checked.eps_t:.5f} {'≥' if strain_row.ok else '<'} {limit:.5f}",
             note=strain_row.note,
             state=strain_row.state,
             check="net_tensile_strain",
@@ -204,9 +205,15 @@ def strength(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
         Line(
             subject="Design strength",
             clause=moment_row.clause,
-            formula="φ M_{n} ≥ M_{u}",
+            formula="φ M_{n}, at least M_{u}",
             numbers=f"{checked.phi:.4g} × {figures.moment(checked.Mn)}",
-            result=f"{figures.moment(checked.phi_Mn)}, at least {figures.moment(demand)}",
+            result=compared(
+                figures.system.to_trade("moment", checked.phi_Mn),
+                figures.system.to_trade("moment", demand),
+                figures.unit("moment"),
+                least=True,
+                ok=moment_row.ok,
+            ),
             state=moment_row.state,
             check="flexural_strength",
         ),
@@ -215,14 +222,15 @@ def strength(checked: CheckedLayout, found: Forces) -> tuple[Line, ...]:
 
 def _phi(checked: CheckedLayout) -> Line:
     steel = checked.section.steel
+    equal = True
     limit = tension_controlled_strain(steel)
     spread = PHI_TENSION - PHI_COMPRESSION
     if checked.eps_t >= limit:
         formula = f"φ = {PHI_TENSION:.2f} where ε_{{t}} ≥ {limit:.5f}"
-        numbers = "tension-controlled"
+        numbers, equal = "tension-controlled", False
     elif checked.eps_t <= steel.eps_ty:
         formula = f"φ = {PHI_COMPRESSION:.2f} where ε_{{t}} ≤ ε_{{ty}} = {steel.eps_ty:.5f}"
-        numbers = "compression-controlled"
+        numbers, equal = "compression-controlled", False
     else:
         formula = (
             f"φ = {PHI_COMPRESSION:.2f} + {spread:.2f} (ε_{{t}} − ε_{{ty}})"
@@ -237,61 +245,6 @@ def _phi(checked: CheckedLayout) -> Line:
         clause="21.2.2",
         formula=formula,
         numbers=numbers,
+        equal=equal,
         result=f"{checked.phi:.3f}",
     )
-
-
-def minimum(checked: CheckedLayout) -> tuple[Line, ...]:
-    """Lines of 9.6.1.
-
-    Parameters
-    ----------
-    checked : CheckedLayout
-        Layout with its strength.
-
-    Returns
-    -------
-    tuple of Line
-        As,min, and the exemption where it is needed.
-    """
-    section, edition = checked.section, checked.section.edition
-    figures = Figures(edition)
-    row = row_of(checked, "minimum_steel")
-    least = float(minimum_area(section, np.array([checked.d]))[0])
-    root, floor = plain(edition.minimum_steel_root), plain(edition.minimum_steel_floor)
-    fy = min(section.steel.fy, edition.minimum_steel_yield_cap)
-    fc, bw, d = plain(section.concrete.fc), plain(web_for_minimum(section)), plain(checked.d)
-    by_area = Line(
-        subject="Least steel",
-        clause="9.6.1.2",
-        formula=f"A_{{s,min}} = max({root} √f′_{{c}}, {floor}) b_{{w}} d / f_{{y}}",
-        numbers=f"max({root} √{fc}, {floor}) × {bw} × {d} / {plain(fy)}",
-        result=figures.of("area", least),
-        note="" if fy == section.steel.fy else f"f_{{y}} taken as {figures.of('stress', fy)}",
-    )
-    exempt: tuple[Line, ...] = ()
-    if row.clause != "9.6.1.2" and checked.As_required is not None:
-        required = checked.As_required
-        exempt = (
-            Line(
-                subject="Area that brings φ Mn to Mu at the same depths, plus a third",
-                clause="9.6.1.3",
-                formula="(4/3) A_{s,required}",
-                numbers=f"4/3 × {plain(required)}",
-                result=figures.of("area", required * 4.0 / 3.0),
-            ),
-        )
-    demand = row.demand if row.demand is not None else math.inf
-    verdict = Line(
-        subject="Steel provided",
-        clause=row.clause,
-        formula="A_{s} ≥ least area",
-        numbers=f"{plain(checked.As)} ≥ {plain(demand)}"
-        if row.ok
-        else f"{plain(checked.As)} < {plain(demand)}",
-        result=figures.of("area", checked.As),
-        note=visible(row.note.replace("^2", "²")),
-        state=row.state,
-        check="minimum_steel",
-    )
-    return (by_area, *exempt, verdict)

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import html
-import math
 import re
 import unicodedata
 from dataclasses import dataclass
@@ -216,8 +215,6 @@ def size_of(quantity: str, value: float, figures: Figures) -> str:
     Returns
     -------
     str
-        With its unit; ``none`` where no value is enough.
+        With its unit.
     """
-    if not math.isfinite(value):
-        return "none"
     return figures.moment(value) if quantity == "moment" else figures.of(quantity, value)

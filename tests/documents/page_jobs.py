@@ -37,7 +37,20 @@ cover = "1.5 in"
 stirrup = "#4"
 """
 )
-RANKED_SI = job_text("si", section={"keep": "3", "Ms": '"250 kN*m"'})
+RANKED_SI = job_text(
+    "si",
+    section={
+        "keep": "3",
+        "Ms": '"250 kN*m"',
+        "min_gap": '"40 mm"',
+        "statically_determinate": "true",
+        "variety": '"off"',
+        "by": '"lightest"',
+        "exposure": '"interior"',
+        "slab": '{ thickness = "125 mm", clear_left = "2.7 m", clear_right = "1.7 m",'
+        ' span = "8 m" }',
+    },
+)
 CHECKED_US = """
 title = "Given"
 code = "ACI 318-14"

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import replace
 from functools import cache
 
@@ -152,3 +153,11 @@ def renamed(text: str) -> RankResult:
     )
     job = replace(result.job, title=text)
     return replace(result, job=job, sections=(replace(sections[0], layouts=layouts), sections[1]))
+
+
+RESULTS: dict[str, Callable[[], RankResult | CheckResult]] = {
+    "ranked us": lambda: ranked("us"),
+    "ranked si": lambda: ranked("si"),
+    "checked us": lambda: checked("us"),
+    "checked si": lambda: checked("si"),
+}

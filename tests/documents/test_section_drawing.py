@@ -6,6 +6,7 @@ import io
 import math
 import re
 from itertools import pairwise
+from typing import Any
 
 import ezdxf
 import pytest
@@ -17,15 +18,9 @@ from optimizer import CheckResult, RankResult
 from optimizer.documents.section_drawing import drawing_dxf
 from optimizer.documents.section_shapes import concrete_corners, drawn_layers, stirrup_bends
 from optimizer.documents.short_list_table import layouts_of
-from tests.documents.sample_results import HOSTILE, checked, ranked, renamed
+from tests.documents.sample_results import HOSTILE, RESULTS, checked, ranked, renamed
 from tests.engine.builders import us_layout, us_section
 
-RESULTS = {
-    "ranked us": lambda: ranked("us"),
-    "ranked si": lambda: ranked("si"),
-    "checked us": lambda: checked("us"),
-    "checked si": lambda: checked("si"),
-}
 # Lengths of some thousand units in double precision, added to an origin and read back.
 CLOSE = 1e-9
 OUTLINES = [
@@ -49,9 +44,14 @@ def read(result: RankResult | CheckResult) -> Drawing:
     return ezdxf.read(io.StringIO(drawing_dxf(result)))
 
 
+def entities(document: Drawing, kind: str) -> list[Any]:
+    """Return what a drawing shows of a kind, in its order."""
+    return list(document.modelspace().query(kind))
+
+
 def origins_of(document: Drawing) -> list[float]:
     """Return the middle of each stirrup, which is that of its web, left to right."""
-    outer = list(document.modelspace().query("LWPOLYLINE[layer=='STIRRUP']"))[::2]
+    outer = entities(document, "LWPOLYLINE[layer=='STIRRUP']")[::2]
     xs = [[point[0] for point in line.get_points()] for line in outer]
     return [(min(x) + max(x)) / 2 for x in xs]
 
@@ -90,7 +90,7 @@ def test_bars_are_where_the_placement_has_them(name: str) -> None:
         if layout is not None
         for x, y, radius in expected_bars(layout)
     ]
-    circles = list(document.modelspace().query("CIRCLE"))
+    circles = entities(document, "CIRCLE")
     found = [(*circle.dxf.center.vec2, circle.dxf.radius) for circle in circles]
     assert len(found) == len(expected) >= 6
     for is_at, should in zip(sorted(found), sorted(expected), strict=True):
@@ -148,7 +148,7 @@ def test_concrete_encloses_the_gross_area(outline: Outline) -> None:
 def test_concrete_is_drawn_closed() -> None:
     """One closed line a section, as wide as its widest part."""
     result = ranked()
-    lines = list(read(result).modelspace().query("LWPOLYLINE[layer=='CONCRETE']"))
+    lines = entities(read(result), "LWPOLYLINE[layer=='CONCRETE']")
     widths = [14.0, None, 36.0, 30.0, 10.0]
     assert len(lines) == len(widths)
     for line, width, section in zip(lines, widths, result.sections, strict=True):
@@ -200,9 +200,7 @@ def test_dimensions_measure_the_section() -> None:
     """Width, depth, flange, cover and each layer's height are dimensioned, to scale."""
     result = checked("us")
     document = read(result)
-    measured = [
-        round(float(item.get_measurement()), 6) for item in document.modelspace().query("DIMENSION")
-    ]
+    measured = [round(float(item.get_measurement()), 6) for item in entities(document, "DIMENSION")]
     wanted = []
     for section in result.sections:
         outline, layout = section.section.outline, section.layout.checked
@@ -217,13 +215,13 @@ def test_dimensions_measure_the_section() -> None:
     for value in wanted:
         assert round(value, 6) in measured, value
     # Each has its picture, so that viewers need not make one.
-    for item in document.modelspace().query("DIMENSION"):
+    for item in entities(document, "DIMENSION"):
         assert len(document.blocks.get(item.dxf.geometry)) > 3
 
 
 def texts_of(document: Drawing) -> list[str]:
     """Return all texts of a drawing without their codes."""
-    return [fast_plain_mtext(item.text) for item in document.modelspace().query("MTEXT")]
+    return [str(fast_plain_mtext(item.text)) for item in entities(document, "MTEXT")]
 
 
 def test_layers_and_marks_are_named() -> None:
@@ -251,7 +249,7 @@ def test_section_without_layout_shows_no_bars() -> None:
     document = read(ranked())
     assert any("no layout meets every rule" in text for text in texts_of(document))
     last = origins_of(document)[-1]
-    circles = document.modelspace().query("CIRCLE")
+    circles = entities(document, "CIRCLE")
     assert all(circle.dxf.center.x < last - 5.0 for circle in circles)
 
 
@@ -263,14 +261,14 @@ def test_sections_stand_apart_on_round_origins(name: str) -> None:
     step = 10.0 if result.job.edition.units == "us" else 250.0
     for x in origins_of(document):
         assert x / step == pytest.approx(round(x / step), abs=CLOSE)
-    lines = document.modelspace().query("LWPOLYLINE[layer=='CONCRETE']")
+    lines = entities(document, "LWPOLYLINE[layer=='CONCRETE']")
     spans = [
         (min(point[0] for point in line.get_points()), max(point[0] for point in line.get_points()))
         for line in lines
     ]
     for (_, end), (start, _) in pairwise(spans):
         assert end < start
-    notes = [item.dxf.insert.x for item in document.modelspace().query("MTEXT")]
+    notes = [item.dxf.insert.x for item in entities(document, "MTEXT")]
     assert min(notes) <= spans[0][0]
 
 

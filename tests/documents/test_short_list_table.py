@@ -12,14 +12,8 @@ import pytest
 from optimizer import CheckResult, RankResult
 from optimizer.documents.short_list_table import layouts_of, short_list_csv, short_list_table
 from optimizer.documents.tables import Column, Table, csv_text, looks_like_formula
-from tests.documents.sample_results import HOSTILE, checked, ranked, renamed
+from tests.documents.sample_results import HOSTILE, RESULTS, checked, ranked, renamed
 
-RESULTS = {
-    "ranked us": lambda: ranked("us"),
-    "ranked si": lambda: ranked("si"),
-    "checked us": lambda: checked("us"),
-    "checked si": lambda: checked("si"),
-}
 # Numbers are written with ten significant digits.
 DIGITS = 1e-9
 

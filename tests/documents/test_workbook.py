@@ -7,6 +7,7 @@ import math
 import re
 import time
 import zipfile
+from dataclasses import replace
 from pathlib import Path
 from typing import Any
 from xml.etree import ElementTree as ET
@@ -24,15 +25,9 @@ from optimizer.documents.workbook import bytes_of_tables, workbook_bytes
 from optimizer.documents.workbook_tables import checks_table, notes_table
 from optimizer.files import write_bytes
 from optimizer.scoring import TERMS
-from optimizer.views import CAUTION, NOT_CHECKED
-from tests.documents.sample_results import HOSTILE, checked, ranked, renamed
+from optimizer.wording import CAUTION, NOT_CHECKED, proof_of
+from tests.documents.sample_results import HOSTILE, RESULTS, checked, ranked, renamed
 
-RESULTS = {
-    "ranked us": lambda: ranked("us"),
-    "ranked si": lambda: ranked("si"),
-    "checked us": lambda: checked("us"),
-    "checked si": lambda: checked("si"),
-}
 SHEETS = ["Short list", "Checks", "Inputs", "Notes"]
 MAIN = "{http://schemas.openxmlformats.org/spreadsheetml/2006/main}"
 # A float written to the file and read back is the same one; only units are converted.
@@ -170,10 +165,14 @@ def test_notes_hold_caution_limits_and_proof() -> None:
     assert "ACI 318-19" in texts
     proofs = notes[notes["subject"] == "proof"].set_index("section")["note"]
     assert list(proofs.index) == [section.section.mark for section in ranked().sections]
-    closing = ranked().sections[0].closing_value
-    assert closing is not None
-    assert f"nothing left out has a score below {closing:.2f} lb/ft" in proofs["R1 rectangle"]
+    assert proofs["R1 rectangle"] == proof_of(ranked().sections[0])
+    assert proofs["R1 rectangle"].startswith("Proved: ")
     assert proofs["N1 too small"] == "Proved: no layout meets every rule."
+    stopped = replace(
+        ranked(), sections=tuple(replace(item, proved=False) for item in ranked().sections)
+    )
+    notes = frames(stopped)["Notes"]
+    assert all("NOT PROVED" in note for note in notes[notes["subject"] == "proof"]["note"])
     assert not set(frames(checked())["Notes"]["subject"]) & {"proof", "score"}
 
 
@@ -279,3 +278,18 @@ def test_bytes_are_written_whole(tmp_path: Path) -> None:
         write_bytes(path, b"", replace=False)
     assert path.read_bytes() == data
     assert [item.name for item in tmp_path.iterdir()] == ["list.xlsx"]
+
+
+def test_section_that_nothing_helps_says_so() -> None:
+    """Where no single change helps and nothing fits at all, that is written, not left out."""
+    result = ranked()
+    last = result.sections[-1]
+    assert last.diagnosis is not None
+    bare = replace(last.diagnosis, strongest=None, blocked_by=(), remedies=())
+    hopeless = replace(result, sections=(replace(last, diagnosis=bare),))
+    found = frames(hopeless)
+    (row,) = found["Remedies"].to_dict("records")
+    assert row["key"] == "no single change that was tried helps"
+    notes = found["Notes"].set_index("subject")["note"]
+    assert notes["no layout"] == "No layout meets the rules other than strength either."
+    assert len(found["Checks"]) == 0

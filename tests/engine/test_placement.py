@@ -137,8 +137,8 @@ def test_layer_that_cannot_stack(layers: tuple[str, str]) -> None:
         (("4 #8", "1 #8"), (-4.0,)),
         (("2 #8", "1 #8"), (-4.0,)),
         # Lines 1.6 apart.
-        (("6 #6", "5 #6"), (-4.0, -2.4, -0.8, 2.4, 4.0)),
-        (("6 #6", "3 #6"), (-4.0, -2.4, 4.0)),
+        (("6 #6", "5 #6"), (-4.0, -2.4, -0.8, 0.8, 4.0)),
+        (("6 #6", "3 #6"), (-4.0, -0.8, 4.0)),
         # A layer over one that stands to one side keeps to the lines that are left.
         (("4 #8", "3 #8", "3 #8"), (-4.0, -4 / 3, 4.0)),
         (("4 #8", "3 #8", "2 #8"), (-4.0, 4.0)),
@@ -146,7 +146,7 @@ def test_layer_that_cannot_stack(layers: tuple[str, str]) -> None:
     ],
 )
 def test_layer_that_cannot_be_symmetric(layers: tuple[str, ...], x: tuple[float, ...]) -> None:
-    """It stands on lines of the layer below, half from each side, the odd bar from the left."""
+    """It stands on lines of the layer below with the largest smallest gap."""
     *_, below, placed = place(us_section(), us_layout(*layers)).layers
     np.testing.assert_allclose(placed.x, x, atol=1e-12)
     assert placed.aligned
@@ -158,6 +158,22 @@ def test_gap_of_a_layer_that_cannot_be_symmetric() -> None:
     placed = place(us_section(), us_layout("4 #8", "3 #8")).layers[1]
     assert placed.gap == pytest.approx(8 / 3 - 1, rel=1e-12)
     assert placed.spacing == pytest.approx(16 / 3, rel=1e-12)
+
+
+@pytest.mark.parametrize(
+    ("layers", "gap"),
+    [(("2 #9 + 4 #4", "3 #9"), 1.128), (("2 #9 + 4 #5", "3 #8"), 1.0)],
+)
+def test_asymmetric_layer_takes_the_roomiest_lines(layers: tuple[str, ...], gap: float) -> None:
+    """Neighbouring lines would be too close for the larger bars above; others are not."""
+    placed = place(us_section(), us_layout(*layers)).layers[1]
+    assert placed.gap > gap
+
+
+def test_thick_bar_over_thin_ones_is_not_on_their_line() -> None:
+    """A #18 does not fit the corner over #8 bars: it is placed alone and not aligned."""
+    placed = place(us_section(), us_layout("2 #8", "1 #18")).layers[1]
+    assert (placed.x, placed.aligned) == ((0.0,), False)
 
 
 def test_layer_over_an_asymmetric_one() -> None:

@@ -223,6 +223,23 @@ def test_a_value_listed_twice_is_one_variant(key: str, values: str) -> None:
     assert len({variant.changes for variant in found}) == len(found) == 2
 
 
+@pytest.mark.xfail(reason="sizes of the outline are named with four digits")
+@pytest.mark.parametrize(
+    ("units", "key", "value", "named"),
+    [
+        ("us", "widths", "14 1/8 in", "14.125 in"),
+        ("us", "depths", "24.0625 in", "24.0625 in"),
+        ("si", "depths", "1066.8 mm", "1066.8 mm"),
+    ],
+)
+def test_an_outline_is_named_as_it_is(units: str, key: str, value: str, named: str) -> None:
+    """What is to be built is not rounded: 14 1/8 in is no 14.12 in."""
+    problem = _problem(units, {key: f'["{value}"]'})
+    _, other = variants(problem, problem.levers, None)
+    ((_, _, after),) = other.changes
+    assert after == named
+
+
 def test_outlines_that_are_none_are_skipped() -> None:
     """A web wider than its flange, a beam shallower than it, one without room for bars."""
     flange = {"flange": '{ width = "20 in", thickness = "6 in" }'}
