@@ -13,14 +13,11 @@ from optimizer.json_layouts import capacity_data, layout_data, rows_data
 from optimizer.json_options import options_data
 from optimizer.options import OptionsResult
 from optimizer.results import CheckResult, RankedSection, RankResult
+from optimizer.wording import CAUTION
 
 VERSION = 1
 Result = RankResult | CheckResult | OptionsResult
 _UNIT_KINDS = ("length", "area", "moment", "stress", "mass_per_length")
-CAUTION = (
-    "For review by a licensed design professional; local codes and the authority having"
-    " jurisdiction govern."
-)
 
 
 def to_json(result: Result, *, ascii_only: bool = False) -> str:

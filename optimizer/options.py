@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable
 from dataclasses import dataclass
 
-from engine import CheckedLayout, check_layout, check_layouts, place
+from engine import CheckedLayout, Section, check_layout, check_layouts, place
 from optimizer.changes import Difference, differences, points_to_accept
 from optimizer.errors import DefectError, JobError
 from optimizer.job import Job
@@ -81,6 +81,11 @@ class SectionOptions:
     trade_off: tuple[Option, ...]
     proved: bool
     order_survives: bool | None
+
+    @property
+    def section(self) -> Section:
+        """Section as drawn."""
+        return self.problem.section
 
     @property
     def chosen(self) -> tuple[Option, ...]:

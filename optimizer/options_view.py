@@ -10,6 +10,7 @@ from optimizer.measures import Band
 from optimizer.options import Option, OptionsResult, SectionOptions
 from optimizer.palette import Palette
 from optimizer.views import View
+from optimizer.wording import invented_prices_of, trade_off_proof_of
 
 
 def show_options(view: View, result: OptionsResult) -> None:
@@ -27,8 +28,9 @@ def show_options(view: View, result: OptionsResult) -> None:
         _section(view, section, currency)
     if result.palette is not None:
         _palette(view, result)
-    if result.job.prices is not None and result.job.prices.invented:
-        view.say(f"Prices of list {result.job.prices.name!r} are INVENTED, for demonstration only.")
+    invented = invented_prices_of(result)
+    if invented:
+        view.say(invented, "bold")
 
 
 def _section(view: View, section: SectionOptions, currency: str | None) -> None:
@@ -47,17 +49,7 @@ def _section(view: View, section: SectionOptions, currency: str | None) -> None:
     system = drawn.section.edition.system
     view.console.print(_choice(view, section, system, currency))
     view.say()
-    if section.proved:
-        view.say(
-            f"Proved: these are among the {len(section.trade_off)} layouts that no other within"
-            " the levers beats in all of mass, bars, sizes, layers, labour"
-            + (", cost and carbon." if currency else ".")
-        )
-    else:
-        view.say("NOT PROVED: the work limit stopped the search. Raise work_limit.", "bold")
-    if section.order_survives is not None:
-        words = "keep" if section.order_survives else "do NOT keep"
-        view.say(f"Sorted by cost the options {words} their order with low and high factors.")
+    view.say(trade_off_proof_of(section), "" if section.proved else "bold")
     for option in section.chosen:
         view.say()
         _against_drawn(view, option, system, currency)

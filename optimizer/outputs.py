@@ -105,10 +105,20 @@ class OutputFiles:
 
             write_text(self.dxf, drawing_dxf(result))
         if self.csv is not None:
-            from optimizer.documents.short_list_table import short_list_csv
-
-            write_text(self.csv, short_list_csv(result))
+            write_text(self.csv, _csv(result))
         return self.json is not None and _put_json(result, self.json)
+
+
+def _csv(result: Result) -> str:
+    from optimizer.options import OptionsResult
+
+    if isinstance(result, OptionsResult):
+        from optimizer.documents.options_tables import trade_off_csv
+
+        return trade_off_csv(result)
+    from optimizer.documents.short_list_table import short_list_csv
+
+    return short_list_csv(result)
 
 
 def _put_json(result: Result, target: str) -> bool:

@@ -2,7 +2,12 @@
 
 from __future__ import annotations
 
+from typing import TYPE_CHECKING
+
 from optimizer.results import RankedSection
+
+if TYPE_CHECKING:
+    from optimizer.options import OptionsResult, SectionOptions
 
 NOT_CHECKED = (
     "Not checked: shear, torsion, deflection, cut-offs and anchorage, axial force, isolated"
@@ -74,3 +79,55 @@ def exemption_of(result: RankedSection) -> str:
         f"Relying on 9.6.1.3 (less steel than 9.6.1.2 asks, but 4/3 of what strength needs, at"
         f" every section of the beam): line {', '.join(lines)}."
     )
+
+
+def trade_off_proof_of(section: SectionOptions) -> str:
+    """Say what is proved about the options of a section.
+
+    Parameters
+    ----------
+    section : SectionOptions
+        Options of a section.
+
+    Returns
+    -------
+    str
+        One or two sentences.
+    """
+    if not section.proved:
+        return (
+            "NOT PROVED: the work limit stopped the search; better options may exist."
+            " Raise work_limit."
+        )
+    count = len(section.trade_off)
+    if not count:
+        return "Proved: no layout within the levers passes every check."
+    priced = section.order_survives is not None
+    aims = "mass, bars, sizes, layers" + (", labour, cost and carbon" if priced else " and labour")
+    text = (
+        f"Proved: the trade-off set holds the {count} layouts that no other within the levers beats"
+        f" in all of {aims}."
+    )
+    if priced:
+        keep = "keep" if section.order_survives else "do NOT keep"
+        text += f" Sorted by cost they {keep} their order with low and high factors."
+    return text
+
+
+def invented_prices_of(result: OptionsResult) -> str:
+    """Warn of prices that are for demonstration only.
+
+    Parameters
+    ----------
+    result : OptionsResult
+        Options of a job.
+
+    Returns
+    -------
+    str
+        One sentence; empty if the prices are the user's own, or there are none.
+    """
+    prices = result.job.prices
+    if prices is None or not prices.invented:
+        return ""
+    return f"Prices of list {prices.name!r} are INVENTED, for demonstration only."

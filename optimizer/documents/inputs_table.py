@@ -7,6 +7,7 @@ from collections.abc import Iterator
 from engine import Flange, Section
 from optimizer.documents.short_list_table import Result
 from optimizer.documents.tables import Cell, Column, Table
+from optimizer.options import OptionsResult
 from optimizer.problem import Problem
 
 _COLUMNS = (
@@ -19,12 +20,12 @@ _COLUMNS = (
 _Input = tuple[str, str, Cell, str]
 
 
-def inputs_table(result: Result) -> Table:
+def inputs_table(result: Result | OptionsResult) -> Table:
     """Make the table of inputs.
 
     Parameters
     ----------
-    result : RankResult or CheckResult
+    result : RankResult, CheckResult or OptionsResult
         Result of a job.
 
     Returns

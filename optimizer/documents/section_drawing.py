@@ -8,12 +8,14 @@ from __future__ import annotations
 
 import textwrap
 
+from engine import Section
 from engine.units import plain
 from optimizer.documents.drawing_paper import Paper, next_step, width_of
 from optimizer.documents.section_panel import Panel, draw_panel, reach, rise
-from optimizer.documents.short_list_table import Result, ResultSection
+from optimizer.documents.short_list_table import Result
 from optimizer.documents.wording import visible
-from optimizer.results import RankedSection
+from optimizer.options import OptionsResult
+from optimizer.results import CheckedSection, RatedLayout
 from optimizer.wording import CAUTION, NOT_CHECKED
 
 _BETWEEN = 4.0  # from panel to panel and to the notes, in text heights
@@ -23,20 +25,21 @@ _CAPTION_LETTERS, _NOTE_LETTERS = 48, 100
 _STEP = {"us": 10.0, "si": 250.0}  # origins lie on multiples of it [in or mm]
 
 
-def drawing_dxf(result: Result) -> str:
+def drawing_dxf(result: Result | OptionsResult) -> str:
     """Draw the chosen layout of every section.
 
     Parameters
     ----------
-    result : RankResult or CheckResult
-        Result of a job: line 1 of each short list, or the layouts given.
+    result : RankResult, CheckResult or OptionsResult
+        Result of a job: line 1 of each short list, or the layouts given, or those and the chosen
+        options beside them.
 
     Returns
     -------
     str
         DXF of release R2010; equal results give equal text.
     """
-    panels = [_panel(section) for section in result.sections]
+    panels = _panels(result)
     job = result.job
     title = f"{_short(job.title)}  ({job.edition.name})" if job.title else job.edition.name
     return drawing_of(panels, Paper(job.edition.system), title)
@@ -110,17 +113,37 @@ def _short(text: str) -> str:
     return shown if len(shown) <= _LONGEST else shown[: _LONGEST - 3] + "..."
 
 
-def _panel(section: ResultSection) -> Panel:
-    asked = section.section
+def _panels(result: Result | OptionsResult) -> list[Panel]:
+    if isinstance(result, OptionsResult):
+        return [
+            panel
+            for section in result.sections
+            for panel in (
+                _panel(section.section, section.drawn, _as_given(section.drawn)),
+                *(
+                    _panel(item.checked.section, item.rated, f"option {item.number}")
+                    for item in section.chosen
+                ),
+            )
+        ]
+    panels = []
+    for section in result.sections:
+        if isinstance(section, CheckedSection):
+            panels.append(_panel(section.section, section.layout, _as_given(section.layout)))
+        elif section.layouts:
+            panels.append(_panel(section.section, section.layouts[0], "line 1 of the short list"))
+        else:
+            none = "no layout meets every rule: no bars drawn"
+            panels.append(_panel(section.section, None, none))
+    return panels
+
+
+def _as_given(rated: RatedLayout) -> str:
+    return "layout given: passes" if rated.checked.ok else "LAYOUT GIVEN: FAILS ITS CHECK"
+
+
+def _panel(asked: Section, rated: RatedLayout | None, verdict: str) -> Panel:
     system = asked.edition.system
-    if isinstance(section, RankedSection):
-        rated = section.layouts[0] if section.layouts else None
-        verdict = "no layout meets every rule: no bars drawn"
-        if rated is not None:
-            verdict = "line 1 of the short list"
-    else:
-        rated = section.layout
-        verdict = "layout given: passes" if rated.checked.ok else "LAYOUT GIVEN: FAILS ITS CHECK"
     moment = system.trade["moment"]
     strength = f"Mu = {system.to_trade('moment', asked.Mu):+.1f} {moment}"
     bars = "no bars"

@@ -23,10 +23,12 @@ from openpyxl.writer.excel import ExcelWriter
 
 from engine import State
 from optimizer.documents.inputs_table import inputs_table
+from optimizer.documents.options_tables import options_tables
 from optimizer.documents.short_list_table import Result, short_list_table
 from optimizer.documents.tables import Cell, Column, Table, looks_like_formula
 from optimizer.documents.wording import visible
 from optimizer.documents.workbook_tables import checks_table, notes_table, remedies_table
+from optimizer.options import OptionsResult
 
 _NO_DATE = datetime.datetime(1980, 1, 1)  # the earliest that the file format can hold
 # Read back as characters by spreadsheets unless their first sign is itself written so.
@@ -41,12 +43,12 @@ _AT_TOP = Alignment(vertical="top")
 _FAILS = State.FAILS.value.upper()
 
 
-def workbook_bytes(result: Result) -> bytes:
+def workbook_bytes(result: Result | OptionsResult) -> bytes:
     """Write a result as a workbook.
 
     Parameters
     ----------
-    result : RankResult or CheckResult
+    result : RankResult, CheckResult or OptionsResult
         Result of a job.
 
     Returns
@@ -54,6 +56,8 @@ def workbook_bytes(result: Result) -> bytes:
     bytes
         Content of an xlsx file; equal results give equal bytes.
     """
+    if isinstance(result, OptionsResult):
+        return bytes_of_tables(options_tables(result), result.job.title)
     tables = [
         short_list_table(result),
         checks_table(result),

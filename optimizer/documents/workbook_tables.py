@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 
 from engine import CheckedLayout
 from engine.units import plain
@@ -30,13 +30,13 @@ _CHECK_COLUMNS = (
     Column(name="verdict", width=14),
     Column(name="note", width=60, wrap=True),
 )
-_NOTE_COLUMNS = (
+NOTE_COLUMNS = (
     Column(name="subject", width=24, wrap=True),
     Column(name="section", width=20, wrap=True),
     Column(name="note", width=100, wrap=True),
 )
 
-_GENERAL_NOTES = (
+GENERAL_NOTES = (
     ("caution", CAUTION),
     ("not checked", NOT_CHECKED),
     ("basis", "Strength by strain compatibility with the equivalent rectangular stress block,"
@@ -75,11 +75,24 @@ def checks_table(result: Result) -> Table:
     Table
         Every row of every layout shown; where none passes, those of the strongest that fits.
     """
+    return table_of_checks(shown for section in result.sections for shown in _shown(section))
+
+
+def table_of_checks(shown: Iterable[tuple[str, int | None, CheckedLayout]]) -> Table:
+    """Make the table of the check rows of any layouts.
+
+    Parameters
+    ----------
+    shown : iterable of (str, int or None, CheckedLayout)
+        What the layout is, its line, and its check.
+
+    Returns
+    -------
+    Table
+        Every row of every layout.
+    """
     rows = [
-        row
-        for section in result.sections
-        for shown_as, line, checked in _shown(section)
-        for row in _check_rows(checked, shown_as, line)
+        row for shown_as, line, checked in shown for row in _check_rows(checked, shown_as, line)
     ]
     return Table(name="Checks", columns=_CHECK_COLUMNS, rows=tuple(rows))
 
@@ -139,14 +152,14 @@ def notes_table(result: Result) -> Table:
         ("code", None, job.edition.name),
         ("made with", None, f"Cagewright {VERSION}"),
     ]
-    notes = _GENERAL_NOTES if isinstance(result, CheckResult) else _GENERAL_NOTES + _RANK_NOTES
+    notes = GENERAL_NOTES if isinstance(result, CheckResult) else GENERAL_NOTES + _RANK_NOTES
     rows += [(subject, None, note) for subject, note in notes]
     rows += [
         (subject, section.section.mark, note)
         for section in result.sections
         for subject, note in _section_notes(section)
     ]
-    return Table(name="Notes", columns=_NOTE_COLUMNS, rows=tuple(rows))
+    return Table(name="Notes", columns=NOTE_COLUMNS, rows=tuple(rows))
 
 
 def _proof(section: RankedSection) -> str:
