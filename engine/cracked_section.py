@@ -8,8 +8,6 @@ import numpy as np
 
 from engine.outlines import FloatArray, Profile
 
-_ITERATIONS = 80  # halvings of the depth: far below floating point
-
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class CrackedSection:
@@ -49,15 +47,23 @@ def cracked_section(profile: Profile, transformed: FloatArray, depth: FloatArray
     -----
     First moments balance about the axis: S(x) = sum(At (d - x)), S of the concrete above it.
     """
-    low = np.zeros(len(transformed))
-    high = np.full(len(transformed), profile.depth)
-    for _ in range(_ITERATIONS):
-        x = (low + high) / 2
-        concrete = profile.area_above(x) * x - profile.moment_above(x)
-        steel = (transformed * (depth - x[:, None])).sum(axis=1)
-        above = concrete < steel
-        low, high = np.where(above, x, low), np.where(above, high, x)
-    x = (low + high) / 2
+    total = transformed.sum(axis=1)
+    moment = (transformed * depth).sum(axis=1)
+    x = np.full(len(transformed), profile.depth)
+    settled = np.zeros(len(transformed), dtype=np.bool_)
+    upper = area = first = 0.0  # edge, and area and first moment above it
+    for width, height in profile.strips:
+        # Within a strip the balance is w x^2/2 + b x + c = 0, and it rises with x.
+        b = area - width * upper + total
+        c = width * upper**2 / 2.0 - first - moment
+        # Below zero only in strips past the axis, whose root is not used.
+        root = (np.sqrt(np.maximum(b * b - 2.0 * width * c, 0.0)) - b) / width
+        here = ~settled & (root <= upper + height)
+        x = np.where(here, root, x)
+        settled |= here
+        first += width * height * (upper + height / 2.0)
+        area += width * height
+        upper += height
     inertia = (transformed * (depth - x[:, None]) ** 2).sum(axis=1)
     upper = 0.0
     for width, height in profile.strips:

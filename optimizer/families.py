@@ -80,6 +80,8 @@ def families(shared: Envelope, rules: BarRules) -> list[Family]:
     list of Family
         In a fixed order.
     """
+    if math.isinf(shared.exempt_area):
+        return []  # no steel at any depth is strong enough within the permitted strains
     return [item for item in all_families(shared, rules) if isinstance(item, Family)]
 
 
