@@ -46,6 +46,15 @@ _KEY_NAMES = {"lightweight": "lambda"}
 _KEEP, _PER_PATTERN, _WORK_LIMIT = 10, 3, 3.0
 
 
+def _first_given(levels: tuple[object, ...], key: str, default: _T) -> _T:
+    """Value of a key at the first level that gives it, else the default."""
+    for level in levels:
+        value: _T | None = getattr(level, key)
+        if value is not None:
+            return value
+    return default
+
+
 class SectionReader:
     """Builds the problem of one section from its keys, the job's and the defaults."""
 
@@ -75,11 +84,7 @@ class SectionReader:
 
     def _own_or(self, group: object, key: str, default: _T) -> _T:
         """The section's value of a key, else its group's, else the default."""
-        for level in (self.keys, group):
-            value = getattr(level, key)
-            if value is not None:
-                return value  # type: ignore[no-any-return]  # the field's type is _T
-        return default
+        return _first_given((self.keys, group), key, default)
 
     def problem(self) -> Problem:
         """Build the problem.
@@ -115,11 +120,7 @@ class SectionReader:
         own, job = self.keys.options, self.job.options
 
         def given(key: str, default: _T) -> _T:
-            for level in (own, job):
-                value = getattr(level, key)
-                if value is not None:
-                    return value  # type: ignore[no-any-return]  # the field's type is _T
-            return default
+            return _first_given((own, job), key, default)
 
         none: list[str] = []
         with self._key("options.grades"):
