@@ -10,7 +10,7 @@ from engine.confinement import confinement_of, is_top_bar
 from engine.development import straight_length
 from engine.hooks import hooked_length
 from engine.laps import lap_length
-from engine.units import plain
+from engine.units import UnitSystem, plain
 from optimizer.measures import Band, Measures
 
 
@@ -47,6 +47,28 @@ class Difference:
         if self.change is None or not self.drawn or self.kind == "percent":
             return None
         return 100.0 * self.change / self.drawn
+
+
+def unit_of(row: Difference, system: UnitSystem, currency: str | None) -> str:
+    """Unit that a figure is shown in.
+
+    Parameters
+    ----------
+    row : Difference
+        Figure.
+    system : UnitSystem
+        Units of the job.
+    currency : str or None
+        Currency of its prices.
+
+    Returns
+    -------
+    str
+        Unit; empty for counts.
+    """
+    per = "ft" if system.name == "us" else "m"
+    own = {"money": f"{currency}/{per}", "carbon": f"kgCO2e/{per}", "percent": "%"}
+    return own.get(row.kind, system.trade.get(row.kind, ""))
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

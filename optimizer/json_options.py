@@ -6,6 +6,7 @@ from dataclasses import asdict
 from typing import Any
 
 from engine.units import UnitSystem
+from optimizer.changes import unit_of
 from optimizer.json_layouts import layout_data
 from optimizer.measures import Measures
 from optimizer.options import Option, OptionsResult, SectionOptions
@@ -26,17 +27,18 @@ def options_data(result: OptionsResult) -> dict[str, Any]:
         Ready for JSON.
     """
     system, prices = result.job.edition.system, result.job.prices
+    currency = None if prices is None else prices.currency
     data: dict[str, Any] = {
         "prices": None
         if prices is None
         else {"name": prices.name, "currency": prices.currency, "invented": prices.invented},
-        "sections": [_section(section, system) for section in result.sections],
+        "sections": [_section(section, system, currency) for section in result.sections],
         "palette": None if result.palette is None else _palette(result.palette),
     }
     return data
 
 
-def _section(section: SectionOptions, system: UnitSystem) -> dict[str, Any]:
+def _section(section: SectionOptions, system: UnitSystem, currency: str | None) -> dict[str, Any]:
     return {
         "mark": section.problem.section.mark,
         "Mu": system.to_trade("moment", section.problem.section.Mu),
@@ -47,7 +49,7 @@ def _section(section: SectionOptions, system: UnitSystem) -> dict[str, Any]:
             "ok": section.drawn.checked.ok,
             "measures": _measures(section.drawn_measures),
         },
-        "trade_off": [_option(option, system) for option in section.trade_off],
+        "trade_off": [_option(option, system, currency) for option in section.trade_off],
     }
 
 
@@ -55,7 +57,7 @@ def _measures(measures: Measures) -> dict[str, Any]:
     return asdict(measures)
 
 
-def _option(option: Option, system: UnitSystem) -> dict[str, Any]:
+def _option(option: Option, system: UnitSystem, currency: str | None) -> dict[str, Any]:
     return {
         "number": option.number,
         "best_at": list(option.reasons),
@@ -67,7 +69,7 @@ def _option(option: Option, system: UnitSystem) -> dict[str, Any]:
         "differences": [
             {
                 "name": row.name,
-                "unit": system.trade.get(row.kind, ""),
+                "unit": unit_of(row, system, currency),
                 "drawn": None if row.drawn is None else system.to_trade(row.kind, row.drawn),
                 "option": None if row.option is None else system.to_trade(row.kind, row.option),
                 "change": None if row.change is None else system.to_trade(row.kind, row.change),

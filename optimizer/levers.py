@@ -55,7 +55,7 @@ def variants(problem: Problem, levers: Levers, prices: PriceList | None) -> list
                 problem=variant,
                 changes=_changes(section, other),
                 aims=Aims(
-                    per_bar=per_bar_aims(other, prices),
+                    per_bar=per_bar_aims(other, prices, envelope=levers.envelope),
                     constant=section_aims(other, prices, envelope=levers.envelope),
                 ),
             )

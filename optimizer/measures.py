@@ -62,7 +62,9 @@ class Measures:
 BANDS: tuple[BandName, ...] = ("low", "typical", "high")
 
 
-def per_bar_aims(section: Section, prices: PriceList | None) -> Callable[[Bar], tuple[float, ...]]:
+def per_bar_aims(
+    section: Section, prices: PriceList | None, *, envelope: bool = False
+) -> Callable[[Bar], tuple[float, ...]]:
     """What one bar of a size adds to mass, bars, labour, and with prices to cost and carbon.
 
     Parameters
@@ -71,6 +73,9 @@ def per_bar_aims(section: Section, prices: PriceList | None) -> Callable[[Bar], 
         Section whose grade the bars have.
     prices : PriceList or None
         Prices and carbon factors.
+    envelope : bool
+        Whether the outline may change: without prices its concrete is an aim of its own then, to
+        which bars add nothing.
 
     Returns
     -------
@@ -82,7 +87,7 @@ def per_bar_aims(section: Section, prices: PriceList | None) -> Callable[[Bar], 
     def aims(bar: Bar) -> tuple[float, ...]:
         plain = (bar.mass, 1.0, bar.mass * bar.relative_labour)
         if prices is None:
-            return plain
+            return (*plain, 0.0) if envelope else plain
         return (
             *plain,
             prices.placed_cost_per_length(bar, grade, "typical"),

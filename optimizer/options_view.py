@@ -5,7 +5,7 @@ from __future__ import annotations
 from rich.text import Text
 
 from engine.units import UnitSystem, plain
-from optimizer.changes import Difference
+from optimizer.changes import Difference, unit_of
 from optimizer.measures import Band
 from optimizer.options import Option, OptionsResult, SectionOptions
 from optimizer.palette import Palette
@@ -42,7 +42,7 @@ def _section(view: View, section: SectionOptions, currency: str | None) -> None:
     else:
         view.say(f"Drawn: {drawn.layout.label}, passes every check")
     if not section.trade_off:
-        view.say("No layout within the levers passes every check.", "bold")
+        view.say(trade_off_proof_of(section), "bold")
         view.say()
         return
     view.say()
@@ -100,7 +100,7 @@ def _against_drawn(view: View, option: Option, system: UnitSystem, currency: str
             continue
         change = "" if row.change is None else _figure(row.change, row, system, signed=True)
         percent = "" if row.percent is None else f"{row.percent:+.1f}%"
-        unit = _unit(row, system, currency)
+        unit = unit_of(row, system, currency)
         name = f"{row.name} [{unit}]" if unit else row.name
         cells = (
             name,
@@ -138,15 +138,6 @@ def _figure(
     size = system.to_trade(row.kind, value)
     text = plain(size)
     return f"+{text}" if signed and size > 0 else text
-
-
-def _unit(row: Difference, system: UnitSystem, currency: str | None) -> str:
-    per = "ft" if system.name == "us" else "m"
-    if row.kind == "money":
-        return f"{currency}/{per}"
-    if row.kind == "carbon":
-        return f"kgCO2e/{per}"
-    return {"percent": "%"}.get(row.kind, system.trade.get(row.kind, ""))
 
 
 def _palette(view: View, result: OptionsResult) -> None:

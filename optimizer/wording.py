@@ -94,19 +94,21 @@ def trade_off_proof_of(section: SectionOptions) -> str:
     str
         One or two sentences.
     """
-    if not section.proved:
-        return (
-            "NOT PROVED: the work limit stopped the search; better options may exist."
-            " Raise work_limit."
-        )
     count = len(section.trade_off)
+    if not section.proved:
+        found = "better options may exist" if count else "no option was found, but some may exist"
+        return f"NOT PROVED: the work limit stopped the search; {found}. Raise work_limit."
     if not count:
         return "Proved: no layout within the levers passes every check."
     priced = section.order_survives is not None
-    aims = "mass, bars, sizes, layers" + (", labour, cost and carbon" if priced else " and labour")
+    aims = ["mass", "bars", "sizes", "layers", "labour"]
+    if priced:
+        aims += ["cost", "carbon"]
+    elif section.problem.levers.envelope:
+        aims.append("concrete")
     text = (
-        f"Proved: the trade-off set holds the {count} layouts that no other within the levers beats"
-        f" in all of {aims}."
+        f"Proved: the trade-off set holds all {count} layouts that no other within the levers"
+        f" beats: none is as good in all of {', '.join(aims)} and better in one."
     )
     if priced:
         keep = "keep" if section.order_survives else "do NOT keep"

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from catalogs import PriceList
 from engine import Flange, Section
 from engine.units import plain
 from optimizer.documents.wording import Figures, visible
+from optimizer.levers import variants
 from optimizer.problem import Problem, Ranking
 
 Pair = tuple[str, str]
@@ -109,16 +111,55 @@ def search_inputs(problem: Problem) -> list[Pair]:
         ("most lines", str(ranking.keep)),
         ("most lines of a pattern", variety),
     ]
-    if problem.slab is not None:
-        figures, slab = Figures(problem.section.edition), problem.slab
-        pairs.append(
-            (
-                "slab (6.3.2)",
-                f"{plain(slab.thickness)} thick, clear {plain(slab.clear_left)} left,"
-                f" {plain(slab.clear_right)} right, span {figures.length(slab.span)}",
-            )
-        )
-    return pairs
+    return pairs + _slab(problem)
+
+
+def lever_inputs(problem: Problem, prices: PriceList | None) -> list[Pair]:
+    """What may change against a drawn layout, and with which prices.
+
+    Parameters
+    ----------
+    problem : Problem
+        Problem of the section, with its drawn layout.
+    prices : PriceList or None
+        Prices and carbon factors of the job.
+
+    Returns
+    -------
+    list of (str, str)
+        Name and value.
+    """
+    figures, levers = Figures(problem.section.edition), problem.levers
+    rules = variants(problem, levers, prices)[0].problem.rules
+    pairs = [
+        ("sizes tried", visible(", ".join(bar.designation for bar in rules.sizes))),
+        ("most layers", str(rules.max_layers)),
+        ("most sizes in a layout", str(rules.max_sizes)),
+        ("most steps between them", str(rules.size_steps)),
+    ]
+    for name, others in (
+        ("grades tried besides", [visible(steel.name) for steel in levers.steels]),
+        ("stirrups tried besides", [visible(bar.designation) for bar in levers.stirrups]),
+        ("widths tried besides", [figures.length(width) for width in levers.widths]),
+        ("depths tried besides", [figures.length(depth) for depth in levers.depths]),
+    ):
+        if others:
+            pairs.append((name, ", ".join(others)))
+    invented = " (INVENTED)" if prices is not None and prices.invented else ""
+    pairs.append(("prices", "none" if prices is None else f"{visible(prices.name)}{invented}"))
+    return pairs + _slab(problem)
+
+
+def _slab(problem: Problem) -> list[Pair]:
+    slab = problem.slab
+    if slab is None:
+        return []
+    figures = Figures(problem.section.edition)
+    text = (
+        f"{plain(slab.thickness)} thick, clear {plain(slab.clear_left)} left,"
+        f" {plain(slab.clear_right)} right, span {figures.length(slab.span)}"
+    )
+    return [("slab (6.3.2)", text)]
 
 
 def score_terms(ranking: Ranking, figures: Figures) -> list[Pair]:

@@ -7,6 +7,7 @@ from collections.abc import Iterator
 from engine import CheckedLayout
 from engine.check_row import ratio_of
 from engine.units import UnitSystem
+from optimizer.changes import unit_of
 from optimizer.documents.inputs_table import inputs_table
 from optimizer.documents.short_list_table import decimals, finite, tightest_layer
 from optimizer.documents.tables import Cell, Column, Table, csv_text
@@ -161,13 +162,6 @@ def _shown(section: SectionOptions) -> Iterator[tuple[str, int | None, CheckedLa
 
 def _differences(result: OptionsResult) -> Table:
     system, currency = result.job.edition.system, _currency(result)
-    per = "ft" if system.name == "us" else "m"
-    units = {
-        "money": f"{currency}/{per}",
-        "carbon": f"kgCO2e/{per}",
-        "percent": "%",
-        **system.trade,
-    }
     rows: list[tuple[Cell, ...]] = []
     for section in result.sections:
         for option in section.chosen:
@@ -176,7 +170,7 @@ def _differences(result: OptionsResult) -> Table:
                     None if value is None else system.to_trade(row.kind, value)
                     for value in (row.drawn, row.option, row.change)
                 )
-                unit = units.get(row.kind)
+                unit = unit_of(row, system, currency) or None
                 start = (section.section.mark, option.number, option.checked.layout.label)
                 share = None if row.percent is None else row.percent / 100.0
                 rows.append((*start, row.name, unit, drawn, other, change, share))

@@ -3,11 +3,9 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from functools import cache
-
-import jinja2
 
 from optimizer.documents import inputs
+from optimizer.documents.options_page import options_html
 from optimizer.documents.page_parts import (
     DiagnosisView,
     LayoutView,
@@ -20,7 +18,9 @@ from optimizer.documents.page_parts import (
     verdict_of,
 )
 from optimizer.documents.plot import strength_plot
-from optimizer.documents.wording import Figures, formula, visible
+from optimizer.documents.rendering import render
+from optimizer.documents.wording import Figures, visible
+from optimizer.options import OptionsResult
 from optimizer.results import (
     CheckedSection,
     CheckResult,
@@ -28,7 +28,7 @@ from optimizer.results import (
     RankResult,
 )
 from optimizer.scoring import TERMS
-from optimizer.wording import CAUTION, NOT_CHECKED, proof_of
+from optimizer.wording import proof_of
 
 Pair = tuple[str, str]
 
@@ -55,12 +55,12 @@ class SectionView:
     diagnosis: DiagnosisView | None
 
 
-def page_html(result: RankResult | CheckResult) -> str:
+def page_html(result: RankResult | CheckResult | OptionsResult) -> str:
     """Write a result as a page.
 
     Parameters
     ----------
-    result : RankResult or CheckResult
+    result : RankResult, CheckResult or OptionsResult
         Result of a job.
 
     Returns
@@ -68,43 +68,22 @@ def page_html(result: RankResult | CheckResult) -> str:
     str
         HTML with its style and drawings inside; equal results give equal text.
     """
-    figures = Figures(result.job.edition)
+    if isinstance(result, OptionsResult):
+        return options_html(result)
     if isinstance(result, RankResult):
         kind = "Ranked bar layouts"
         sections = [_ranked(item, number) for number, item in enumerate(result.sections, 1)]
     else:
         kind = "Check of given bar layouts"
         sections = [_checked(item, number) for number, item in enumerate(result.sections, 1)]
-    return (
-        _environment()
-        .get_template("page.html.j2")
-        .render(
-            title=visible(result.job.title) or kind,
-            kind=kind,
-            code=result.job.edition.name,
-            units={name: figures.unit(name) for name in _UNITS},
-            terms=TERMS,
-            sections=sections,
-            not_checked=NOT_CHECKED,
-            caution=CAUTION,
-        )
+    return render(
+        "page.html.j2",
+        edition=result.job.edition,
+        title=result.job.title,
+        kind=kind,
+        terms=TERMS,
+        sections=sections,
     )
-
-
-_UNITS = ("length", "area", "force", "moment", "stress", "mass_per_length")
-
-
-@cache
-def _environment() -> jinja2.Environment:
-    environment = jinja2.Environment(
-        loader=jinja2.PackageLoader(__package__),
-        autoescape=True,
-        trim_blocks=True,
-        lstrip_blocks=True,
-        undefined=jinja2.StrictUndefined,
-    )
-    environment.filters["formula"] = formula
-    return environment
 
 
 def _ranked(result: RankedSection, number: int) -> SectionView:

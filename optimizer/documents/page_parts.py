@@ -33,8 +33,8 @@ class LayoutView:
         The main figures.
     checks : list of CheckLine
         All rows.
-    calculation : Calculation
-        The worked check.
+    calculation : Calculation or None
+        The worked check, where it is asked for.
     """
 
     title: str
@@ -43,7 +43,7 @@ class LayoutView:
     drawing: str
     facts: list[Pair]
     checks: list[CheckLine]
-    calculation: Calculation
+    calculation: Calculation | None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -138,7 +138,9 @@ def verdict_of(checked: CheckedLayout) -> str:
     return f"FAILS: {', '.join(failing)}" if failing else "passes every check"
 
 
-def layout_view(checked: CheckedLayout, name: str, figures: Figures) -> LayoutView:
+def layout_view(
+    checked: CheckedLayout, name: str, figures: Figures, *, work_out: bool = True
+) -> LayoutView:
     """Gather what the page says about one checked layout, wherever it comes from.
 
     Parameters
@@ -149,6 +151,8 @@ def layout_view(checked: CheckedLayout, name: str, figures: Figures) -> LayoutVi
         What it is called in its heading.
     figures : Figures
         Units.
+    work_out : bool
+        Whether the calculation belongs to it.
 
     Returns
     -------
@@ -176,7 +180,7 @@ def layout_view(checked: CheckedLayout, name: str, figures: Figures) -> LayoutVi
             ("M_{u}", figures.moment(checked.section.demand)),
         ],
         checks=[check_line(row, figures) for row in checked.checks],
-        calculation=worked_check(checked),
+        calculation=worked_check(checked) if work_out else None,
     )
 
 

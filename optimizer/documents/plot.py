@@ -1,19 +1,23 @@
-"""Design strength against steel mass of the listed layouts, as a scalable drawing."""
+"""Design strength against steel mass of layouts, as a scalable drawing."""
 
 from __future__ import annotations
 
 import math
 from collections.abc import Sequence
 from dataclasses import dataclass
+from xml.etree import ElementTree as ET
 
+from engine import Section
 from engine.units import plain
 from optimizer.documents import svg_elements as ink
 from optimizer.documents.wording import Figures
-from optimizer.results import RankedSection
+from optimizer.options import SectionOptions
+from optimizer.results import RankedSection, RatedLayout
 
 _SIZE = (400.0, 270.0)
 _PLOT = (58.0, 14.0, 386.0, 222.0)  # left, top, right and bottom of the frame [px]
 _MARK = 4.5
+_LARGER = {"mark best": 1.0, "mark rest": -1.5}  # beside an ordinary mark [px]
 _STEPS = (1.0, 2.0, 2.5, 5.0, 10.0)
 
 
@@ -60,6 +64,16 @@ def _range(values: Sequence[float]) -> tuple[float, float]:
     return low - margin, high + margin
 
 
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Point:
+    """One layout in a plot: mass, strength [trade's units], name if any, class of its mark."""
+
+    mass: float
+    strength: float
+    label: str
+    kind: str
+
+
 def strength_plot(result: RankedSection, labels: Sequence[str]) -> str:
     """Plot the layouts of a ranked section.
 
@@ -75,31 +89,53 @@ def strength_plot(result: RankedSection, labels: Sequence[str]) -> str:
     str
         An ``svg`` element: a mark for each layout, the line of Mu and that of the mass floor.
     """
-    figures = Figures(result.section.edition)
     points = [
-        (item.checked.layout.mass, figures.system.to_trade("moment", item.checked.phi_Mn))
-        for item in result.layouts
+        _point(item, label, "mark best" if item.rank == 1 else "mark")
+        for item, label in zip(result.layouts, labels, strict=True)
     ]
-    demand = figures.system.to_trade("moment", result.section.demand)
-    floor = [] if result.mass_floor is None else [result.mass_floor]
+    title = "Design strength against steel mass of the listed layouts"
+    return _plot(title, result.section, points, result.mass_floor)
+
+
+def options_plot(result: SectionOptions) -> str:
+    """Plot the drawn layout of a section and every layout that no other beats.
+
+    Parameters
+    ----------
+    result : SectionOptions
+        Options of the section.
+
+    Returns
+    -------
+    str
+        An ``svg`` element: small marks for the trade-off set, those of the chosen options full
+        and with their numbers, a diamond for the drawn layout, the line of Mu.
+    """
+    points = [_point(item.rated, "", "mark rest") for item in result.trade_off if not item.reasons]
+    points += [_point(item.rated, str(item.number), "mark best") for item in result.chosen]
+    points.append(_point(result.drawn, "drawn", "mark drawn"))
+    title = "Design strength against steel mass of the drawn layout and the options"
+    return _plot(title, result.problem.section, points, None)
+
+
+def _point(rated: RatedLayout, label: str, kind: str) -> _Point:
+    checked = rated.checked
+    strength = checked.section.edition.system.to_trade("moment", checked.phi_Mn)
+    return _Point(mass=checked.layout.mass, strength=strength, label=label, kind=kind)
+
+
+def _plot(title: str, section: Section, points: Sequence[_Point], mass_floor: float | None) -> str:
+    figures = Figures(section.edition)
+    demand = figures.system.to_trade("moment", section.demand)
+    floor = [] if mass_floor is None else [mass_floor]
     left, top, right, bottom = _PLOT
-    low, high = _range([mass for mass, _ in points] + floor)
+    low, high = _range([point.mass for point in points] + floor)
     x = _Axis(low=low, high=high, start=left, end=right)
-    low, high = _range([strength for _, strength in points] + [demand])
+    low, high = _range([point.strength for point in points] + [demand])
     y = _Axis(low=low, high=high, start=bottom, end=top)
-    root = ink.drawing(*_SIZE, "Design strength against steel mass of the listed layouts", "plot")
-    for value in ticks(x.low, x.high):
-        ink.line(root, "grid", (x.at(value), top), (x.at(value), bottom))
-        ink.words(root, "note", (x.at(value), bottom + 16.0), plain(value), anchor="middle")
-    for value in ticks(y.low, y.high):
-        ink.line(root, "grid", (left, y.at(value)), (right, y.at(value)))
-        ink.words(root, "note", (left - 6.0, y.at(value) + 4.0), plain(value), anchor="end")
-    ink.box(root, "frame", (left, top), (right - left, bottom - top))
-    mass = f"steel mass, {figures.unit('mass_per_length')}"
-    ink.words(root, "note", ((left + right) / 2, bottom + 36.0), mass, anchor="middle")
-    moment = f"φMn, {figures.unit('moment')}"
-    ink.words(root, "note", (14.0, (top + bottom) / 2), moment, anchor="middle", turned=True)
-    places = [(x.at(mass), y.at(strength)) for mass, strength in points]
+    root = ink.drawing(*_SIZE, title, "plot")
+    _axes(root, x, y, figures)
+    places = [(x.at(point.mass), y.at(point.strength)) for point in points]
     taken = [(px - 6.0, py - 6.0, px + 6.0, py + 6.0) for px, py in places]
     ink.line(root, "demand", (left, y.at(demand)), (right, y.at(demand)))
     for value in floor:
@@ -111,11 +147,11 @@ def strength_plot(result: RankedSection, labels: Sequence[str]) -> str:
         taken.append((x.at(value) - 18.0, top, x.at(value) + 2.0, top + 8.0 + 7.5 * len(text)))
     box = _beside_line(f"Mu {demand:.1f}", y.at(demand), taken)
     ink.words(root, "note strong", (box[0], box[3] - 3.0), f"Mu {demand:.1f}")
-    taken.append(box)
-    for item, place in zip(result.layouts, places, strict=True):
-        kind = "mark best" if item.rank == 1 else "mark"
-        ink.circle(root, kind, place, _MARK + (1.0 if item.rank == 1 else 0.0))
-    for label, place in _joined(labels, places):
+    taken += [box, (left, y.at(demand) - 2.0, right, y.at(demand) + 2.0)]
+    for point, place in zip(points, places, strict=True):
+        _mark(root, point.kind, place)
+    named = [(point.label, at) for point, at in zip(points, places, strict=True) if point.label]
+    for label, place in _joined(named):
         box, anchor = _free(label, place, taken)
         taken.append(box)
         column = box[0] if anchor == "start" else box[2] if anchor == "end" else place[0]
@@ -123,12 +159,37 @@ def strength_plot(result: RankedSection, labels: Sequence[str]) -> str:
     return ink.text_of(root)
 
 
+def _axes(root: ET.Element, x: _Axis, y: _Axis, figures: Figures) -> None:
+    """Grid, frame and what the axes are."""
+    left, top, right, bottom = _PLOT
+    for value in ticks(x.low, x.high):
+        ink.line(root, "grid", (x.at(value), top), (x.at(value), bottom))
+        ink.words(root, "note", (x.at(value), bottom + 16.0), plain(value), anchor="middle")
+    for value in ticks(y.low, y.high):
+        ink.line(root, "grid", (left, y.at(value)), (right, y.at(value)))
+        ink.words(root, "note", (left - 6.0, y.at(value) + 4.0), plain(value), anchor="end")
+    ink.box(root, "frame", (left, top), (right - left, bottom - top))
+    mass = f"steel mass, {figures.unit('mass_per_length')}"
+    ink.words(root, "note", ((left + right) / 2, bottom + 36.0), mass, anchor="middle")
+    moment = f"φMn, {figures.unit('moment')}"
+    ink.words(root, "note", (14.0, (top + bottom) / 2), moment, anchor="middle", turned=True)
+
+
+def _mark(root: ET.Element, kind: str, place: tuple[float, float]) -> None:
+    x, y = place
+    if kind == "mark drawn":
+        reach = _MARK + 2.5
+        ink.polygon(root, kind, [(x, y - reach), (x + reach, y), (x, y + reach), (x - reach, y)])
+    else:
+        ink.circle(root, kind, place, _MARK + _LARGER.get(kind, 0.0))
+
+
 def _joined(
-    labels: Sequence[str], places: Sequence[tuple[float, float]]
+    named: Sequence[tuple[str, tuple[float, float]]],
 ) -> list[tuple[str, tuple[float, float]]]:
     """Labels of layouts that lie on one another become one."""
     found: dict[tuple[float, float], list[str]] = {}
-    for label, (x, y) in zip(labels, places, strict=True):
+    for label, (x, y) in named:
         near = next((at for at in found if abs(at[0] - x) < 2.0 and abs(at[1] - y) < 2.0), (x, y))
         found.setdefault(near, []).append(label)
     return [(", ".join(names), place) for place, names in found.items()]

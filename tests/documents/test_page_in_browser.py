@@ -15,7 +15,9 @@ from pathlib import Path
 import pytest
 
 from optimizer.documents.page import page_html
+from optimizer.options import OptionsResult
 from optimizer.results import CheckResult, RankResult
+from tests.documents.options_jobs import optioned
 from tests.documents.page_jobs import Reader, checked, ranked
 
 _QUIET = (
@@ -57,9 +59,11 @@ def run(browser: str, folder: Path, page: str, *arguments: str) -> tuple[str, st
 RESULTS = [ranked("us"), ranked("si"), checked("us")]
 
 
-@pytest.mark.parametrize("result", RESULTS, ids=["rank us", "rank si", "check us"])
+@pytest.mark.parametrize(
+    "result", [*RESULTS, optioned("us")], ids=["rank us", "rank si", "check us", "options us"]
+)
 def test_opens_without_a_complaint(
-    result: RankResult | CheckResult, browser: str, tmp_path: Path
+    result: RankResult | CheckResult | OptionsResult, browser: str, tmp_path: Path
 ) -> None:
     """The browser keeps every element as written and logs nothing about the page."""
     page = page_html(result)
@@ -78,6 +82,14 @@ def test_complaints_are_seen(browser: str, tmp_path: Path) -> None:
     assert any("cagewright.invalid" in line for line in complaints)
 
 
+def printed(browser: str, folder: Path, page: str, paper: str) -> int:
+    """Return the number of pages on paper."""
+    target = folder / "page.pdf"
+    sized = page.replace("@page {", f"@page {{ size: {paper};")
+    run(browser, folder, sized, "--no-pdf-header-footer", f"--print-to-pdf={target}")
+    return len(_PAGE_OBJECT.findall(target.read_bytes()))
+
+
 @pytest.mark.parametrize("paper", ["A4", "Letter"])
 @pytest.mark.parametrize("result", RESULTS, ids=["rank us", "rank si", "check us"])
 def test_prints_on_whole_pages(
@@ -87,13 +99,32 @@ def test_prints_on_whole_pages(
 
     The exact number hangs on the fonts of the machine; these are its limits.
     """
-    page = page_html(result).replace("@page {", f"@page {{ size: {paper};")
-    target = tmp_path / "page.pdf"
-    run(browser, tmp_path, page, "--no-pdf-header-footer", f"--print-to-pdf={target}")
-    pages = len(_PAGE_OBJECT.findall(target.read_bytes()))
+    page = page_html(result)
+    pages = printed(browser, tmp_path, page, paper)
     layouts = page.count('<section class="layout">')
     sections = len(result.sections)
     # A check of given layouts has its inputs and its worked check on one page.
     starts = 1 + sections + (layouts if isinstance(result, RankResult) else 0)
     assert starts < pages <= 1 + 2 * sections + 4 * layouts
     assert pages >= 1 + 2 * layouts
+
+
+@pytest.mark.parametrize("paper", ["A4", "Letter"])
+@pytest.mark.parametrize("units", ["us", "si"])
+def test_options_print_on_whole_pages(units: str, paper: str, browser: str, tmp_path: Path) -> None:
+    """Head, each section, each layout and the palette start a page.
+
+    A section takes one to two pages, a layout with its calculation two to four, with its check
+    alone one to two, and one more where it is compared with the drawn one.
+    """
+    result = optioned(units)
+    page = page_html(result)
+    pages = printed(browser, tmp_path, page, paper)
+    worked = page.count("<h4>Calculation</h4>")
+    layouts = page.count('<section class="layout">')
+    compared = page.count('<table class="against">')
+    sections = len(result.sections)
+    ends = 1  # the palette, or the limits where they need a page of their own
+    starts = 1 + sections + layouts + (result.palette is not None)
+    assert starts + worked <= pages
+    assert pages <= 1 + 2 * sections + 4 * worked + 2 * (layouts - worked) + compared + ends
