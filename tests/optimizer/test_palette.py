@@ -213,21 +213,23 @@ def test_too_few_sizes_for_every_section() -> None:
 
 
 def test_a_length_weighs_a_section() -> None:
-    """Ten times as long, the second section decides which single size the job keeps.
+    """A long section decides which single size the job keeps.
 
-    Totals are mass a foot times feet, and one foot where no length is given.
+    By ASTM A615 Table 1: alike, 6 #9 of 3.400 lb/ft are 20.40, less than 8 #8 of 2.670 lb/ft;
+    over 400 ft the 5 #8 of the second weigh 13.35 lb/ft against 13.60 of 4 #9.
     """
-    short = ({"Mu": "150", "length": '"4 ft"'}, {"Mu": "330", "length": '"4 ft"'})
-    long = (short[0], {"Mu": "330", "length": '"400 ft"'})
-    bare = choose_palette(_job({"Mu": "150"}, {"Mu": "330"}), 1).choices[0]
-    (one, other) = (choose_palette(_job(*sections), 1).choices[0] for sections in (short, long))
-    for choice, lengths in ((bare, (1, 1)), (one, (4, 4)), (other, (4, 400))):
-        masses = [candidate.mass for candidate in choice.layouts]
-        assert choice.total == pytest.approx(
-            sum(m * n for m, n in zip(masses, lengths, strict=True))
+    short, long = ({"Mu": "330", "length": f'"{feet} ft"'} for feet in (4, 400))
+    found = [
+        choose_palette(_job(*sections), 1).choices[0]
+        for sections in (
+            ({"Mu": "150"}, {"Mu": "330"}),
+            ({"Mu": "150", "length": '"4 ft"'}, short),
+            ({"Mu": "150", "length": '"4 ft"'}, long),
         )
-    assert bare.sizes == one.sizes
-    assert other.layouts[1].mass <= one.layouts[1].mass
+    ]
+    assert [[bar.designation for bar in one.sizes] for one in found] == [["#9"], ["#9"], ["#8"]]
+    totals = [20.40, 4 * 20.40, 4 * 8.01 + 400 * 13.35]
+    assert [one.total for one in found] == pytest.approx(totals, rel=1e-12)
 
 
 def test_lengths_in_si_are_metres() -> None:
