@@ -25,7 +25,8 @@ SMALL_BAR_FACTOR = 0.8
 MOST_TOP_COATED = 1.7
 """Largest psi_t psi_e that need be taken, 25.4.2.4 and 25.4.2.5. [-]"""
 _COATED_CLOSE, _COATED_WIDE = 1.5, 1.2  # psi_e of the same tables
-_LEAST_CONFINEMENT = 0.5  # bars that touch one another or the surface [-]
+LEAST_CONFINEMENT = 0.5
+"""(cb + Ktr)/db of bars that touch one another or the surface. [-]"""
 _ROUNDING = 1e-9
 
 
@@ -132,7 +133,7 @@ def straight_length(
         units differ.
     """
     require_one_edition(concrete, steel, bar)
-    if not (math.isfinite(confinement) and confinement >= _LEAST_CONFINEMENT - _ROUNDING):
+    if not (math.isfinite(confinement) and confinement >= LEAST_CONFINEMENT - _ROUNDING):
         msg = f"got {confinement:.4g}; allowed: at least 0.5; hint: bars overlap or leave the beam"
         raise OutOfRangeError(msg, what="confinement")
     rules = development_rules(concrete.edition)

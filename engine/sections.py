@@ -14,6 +14,11 @@ from engine.materials import Concrete, Steel
 from engine.outlines import Outline, Profile
 from engine.strength_reduction import least_strain
 
+_NUMBERS = (
+    *("cover", "aggregate", "layer_gap", "min_gap"),
+    *("Mu", "Ms", "clear_span", "stirrup_spacing"),
+)
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Section:
@@ -55,6 +60,8 @@ class Section:
         Whether those bars count as compression steel.
     clear_span : float or None
         Clear span ln, where known, for 24.3.4. [in or mm]
+    stirrup_spacing : float or None
+        Spacing of the stirrups along the beam, where known, for development. [in or mm]
 
     Raises
     ------
@@ -80,6 +87,7 @@ class Section:
     opposite: Layout | None = None
     count_opposite: bool = False
     clear_span: float | None = None
+    stirrup_spacing: float | None = None
 
     def __post_init__(self) -> None:
         unit = self.length_unit
@@ -116,7 +124,7 @@ class Section:
 
     def _check_numbers(self) -> None:
         """Refuse what no later check could make sense of."""
-        for name in ("cover", "aggregate", "layer_gap", "min_gap", "Mu", "Ms", "clear_span"):
+        for name in _NUMBERS:
             value = getattr(self, name)
             signed = name in ("Mu", "Ms")
             if value is not None and not (math.isfinite(value) and (signed or value >= 0.0)):

@@ -5,9 +5,10 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from catalogs import Bar
-from engine import CheckedLayout, OutOfRangeError, Section
+from engine import CheckedLayout, Section
 from engine.confinement import confinement_of, is_top_bar
-from engine.development import straight_length
+from engine.development import LEAST_CONFINEMENT, straight_length
+from engine.development_rules import development_rules
 from engine.hooks import hooked_length
 from engine.laps import lap_length
 from engine.units import UnitSystem, plain
@@ -73,23 +74,30 @@ def unit_of(row: Difference, system: UnitSystem, currency: str | None) -> str:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Anchorage:
-    """Lengths of the largest bars of a layout.
+    """Lengths of the largest bars of a layout, in their least favourable layer.
 
     Attributes
     ----------
-    straight, hooked : float
-        Development lengths. [in or mm]
-    lap : float or None
-        Class B lap; None where bars may not be lapped. [in or mm]
+    straight, lap : float or None
+        Development length and class B lap; None where bars lie too close to develop, and for
+        laps where bars may not be lapped. [in or mm]
+    hooked : float
+        Development length of hooks. [in or mm]
+    may_lap : bool
+        Whether bars of this size may be lapped, 25.5.1.1.
+    note : str
+        What stirrups lack along development and laps, or empty.
     """
 
-    straight: float
+    straight: float | None
     hooked: float
     lap: float | None
+    may_lap: bool
+    note: str
 
 
 def anchorage(checked: CheckedLayout) -> Anchorage:
-    """Development of a layout's largest bars, without transverse steel counted.
+    """Development of a layout's largest bars.
 
     Parameters
     ----------
@@ -99,23 +107,38 @@ def anchorage(checked: CheckedLayout) -> Anchorage:
     Returns
     -------
     Anchorage
-        Lengths by the section's edition; uncoated bars, no reduction for excess steel.
+        Lengths by the section's edition: uncoated bars, no reduction for excess steel, hooks not
+        tied; stirrups count where the job gives their spacing.
     """
-    section = checked.section
+    section, placement = checked.section, checked.placement
     bar = checked.layout.sizes[0]
-    confinement = confinement_of(section, checked.placement).ratio
-    top = is_top_bar(section, checked.placement)
-    straight = straight_length(
-        section.concrete, section.steel, bar, confinement=confinement, top=top
+    worst = min(
+        (
+            confinement_of(
+                section,
+                placement,
+                layer=number,
+                diameter=bar.diameter,
+                transverse=section.stirrup_spacing,
+            )
+            for number, layer in enumerate(placement.layers, 1)
+            if any(abs(size - bar.diameter) < 1e-9 for size in layer.diameters)
+        ),
+        key=lambda found: found.ratio,
     )
-    try:
-        lap = lap_length(
-            section.concrete, section.steel, bar, confinement=confinement, top=top
-        ).length
-    except OutOfRangeError:
-        lap = None  # 25.5.1.1: no laps above No. 11
+    top = is_top_bar(section, placement)
+    rules = development_rules(section.edition)
+    may_lap = bar.diameter <= rules.largest_lapped
+    straight = lap = None
+    if worst.ratio >= LEAST_CONFINEMENT:
+        materials = (section.concrete, section.steel, bar)
+        straight = straight_length(*materials, confinement=worst.ratio, top=top).length
+        if may_lap:
+            lap = lap_length(*materials, confinement=worst.ratio, top=top).length
     hooked = hooked_length(section.concrete, section.steel, bar)
-    return Anchorage(straight=straight.length, hooked=hooked.length, lap=lap)
+    return Anchorage(
+        straight=straight, hooked=hooked.length, lap=lap, may_lap=may_lap, note=worst.note
+    )
 
 
 def tie_spacing(section: Section, smallest: Bar) -> float:
@@ -241,22 +264,22 @@ def points_to_accept(
         ("hooked development", before.hooked, after.hooked),
         ("class B lap", before.lap, after.lap),
     ):
-        if other is None and one is not None:
-            points.append("bars above No. 11 may not be lapped (25.5.1.1)")
-        elif one is not None and other is not None and other > one * 1.0001:
+        if one is not None and other is not None and other > one * 1.0001:
             text = f"{what} grows from {plain(one)} to {plain(other)} {unit}"
             points.append(f"{text}: cut-offs and ends to be checked")
+    if before.may_lap and not after.may_lap:
+        points.append("bars above No. 11 may not be lapped (25.5.1.1)")
     if option.d < drawn.d * 0.9999:
         points.append(f"d falls from {plain(drawn.d)} to {plain(option.d)} {unit}: shear strength")
     if option.As < drawn.As * 0.9999:
         points.append("less steel: deflection and service stress to be checked again")
-    if tie_spacing(option.section, option.layout.sizes[-1]) < 0.9999 * tie_spacing(
-        drawn.section, drawn.layout.sizes[-1]
-    ):
+    if option.layout.sizes[-1].diameter < 0.9999 * drawn.layout.sizes[-1].diameter:
         points.append("smaller bars: where they are counted in compression stirrups stand closer")
     if option.section.steel.fy > drawn.section.steel.fy:
-        note = confinement_of(option.section, option.placement).note
-        points += [f"stirrups along development and laps: {note}"] if note else []
+        points += [f"stirrups along development and laps: {after.note}"] if after.note else []
+    reserves = [100.0 * (item.phi_Mn / item.section.demand - 1.0) for item in (drawn, option)]
+    if reserves[1] < reserves[0] - 1.0:
+        points.append(f"reserve over Mu falls from {reserves[0]:.1f} to {reserves[1]:.1f} %")
     gap, drawn_gap = _gap(option), _gap(drawn)
     if gap is not None and drawn_gap is not None and gap < drawn_gap * 0.9999:
         points.append(f"clear gap falls from {plain(drawn_gap)} to {plain(gap)} {unit}")

@@ -58,6 +58,7 @@ def _distance(us: tuple[float, float], si: tuple[float, float]) -> BeforeValidat
 
 SectionSize = Annotated[float, _length((4, 600), (100, 15_000))]
 Thickness = Annotated[float, _length((1.5, 120), (40, 3000))]
+StirrupSpacing = Annotated[float, _length((1, 48), (25, 1200))]
 Cover = Annotated[float, _length((0.375, 12), (10, 300))]
 Gap = Annotated[float, _length((0, 24), (0, 600))]
 PreferredGap = Annotated[float, _length((0.1, 24), (2, 600))]
@@ -176,6 +177,7 @@ class SectionKeys(MaterialKeys, BarKeys, RankingKeys):
     bottom_flange: FlangeKeys | None = None
     slab: SlabKeys | None = None
     span: Span | None = None
+    stirrup_spacing: StirrupSpacing | None = None
     layers: Layers | None = None
     opposite: Layers | None = None
     count_opposite: StrictBool = False

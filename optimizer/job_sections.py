@@ -127,6 +127,13 @@ class SectionReader:
             steels = tuple(self._graded(name, "options.grades") for name in given("grades", none))
         with self._key("options.stirrups"):
             stirrups = tuple(catalog.bar(name) for name in given("stirrups", none))
+        for bar in stirrups:
+            if bar.diameter > self.edition.largest_stirrup:
+                msg = (
+                    f"{self.where}, options.stirrups: got {bar.designation}; allowed: up to"
+                    f" {self.edition.largest_stirrup:g} {self.edition.system.inner['length']}"
+                )
+                raise JobError(msg)
         sizes: list[float] = []
         levers = Levers(
             sizes=given("sizes", True),
@@ -270,6 +277,7 @@ class SectionReader:
                 opposite=opposite,
                 count_opposite=keys.count_opposite,
                 clear_span=span,
+                stirrup_spacing=keys.stirrup_spacing,
             )
 
     def _rules(self, catalog: BarCatalog) -> BarRules:

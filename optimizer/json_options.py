@@ -44,6 +44,7 @@ def _section(section: SectionOptions, system: UnitSystem, currency: str | None) 
         "Mu": system.to_trade("moment", section.problem.section.Mu),
         "proved": section.proved,
         "order_survives": section.order_survives,
+        "carbon_order_survives": section.carbon_order_survives,
         "drawn": {
             **layout_data(section.drawn, system),
             "ok": section.drawn.checked.ok,

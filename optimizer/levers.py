@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import replace
 from itertools import product
 from typing import TypeVar
 
+import numpy as np
+
 from catalogs import PriceList
-from engine import EngineError, Section
+from engine import EngineError, Section, Steel
 from engine.units import plain
 from optimizer.flanges import resized
 from optimizer.measures import per_bar_aims, section_aims
@@ -38,10 +41,10 @@ def variants(problem: Problem, levers: Levers, prices: PriceList | None) -> list
     rules = _rules(problem, levers)
     found = []
     choices = product(
-        _first(section.steel, levers.steels),
-        _first(section.stirrup, levers.stirrups),
-        _first(section.outline.web, levers.widths),
-        _first(section.outline.depth, levers.depths),
+        _distinct(section.steel, levers.steels, lambda steel: _traits(steel, rules, prices)),
+        _distinct(section.stirrup, levers.stirrups, lambda bar: (bar.diameter,)),
+        _distinct(section.outline.web, levers.widths, lambda web: (web,)),
+        _distinct(section.outline.depth, levers.depths, lambda depth: (depth,)),
     )
     for steel, stirrup, web, depth in choices:
         try:
@@ -63,9 +66,23 @@ def variants(problem: Problem, levers: Levers, prices: PriceList | None) -> list
     return found
 
 
-def _first(drawn: _T, others: tuple[_T, ...]) -> list[_T]:
-    """The drawn value, then the others in their order."""
-    return [drawn, *(other for other in others if other != drawn)]
+def _distinct(
+    drawn: _T, others: tuple[_T, ...], traits: Callable[[_T], tuple[float, ...]]
+) -> list[_T]:
+    """The drawn value, then the others in their order, each once by what tells them apart."""
+    found = [drawn]
+    for other in others:
+        mine = traits(other)
+        if not any(np.allclose(mine, traits(known), rtol=1e-6, atol=0.0) for known in found):
+            found.append(other)
+    return found
+
+
+def _traits(steel: Steel, rules: BarRules, prices: PriceList | None) -> tuple[float, ...]:
+    """Strength and prices: two names for the same of both are one steel."""
+    if prices is None:
+        return (steel.fy,)
+    return (steel.fy, *(prices.steel_price(bar, steel.name) for bar in rules.sizes))
 
 
 def _rules(problem: Problem, levers: Levers) -> BarRules:
@@ -90,7 +107,7 @@ def _changes(drawn: Section, other: Section) -> tuple[tuple[str, str, str], ...]
     pairs = (
         ("steel", steel(drawn), steel(other)),
         ("stirrup", drawn.stirrup.designation, other.stirrup.designation),
-        ("width", f"{plain(drawn.outline.web)} {unit}", f"{plain(other.outline.web)} {unit}"),
-        ("depth", f"{plain(drawn.outline.depth)} {unit}", f"{plain(other.outline.depth)} {unit}"),
+        ("width", f"{drawn.outline.web:.6g} {unit}", f"{other.outline.web:.6g} {unit}"),
+        ("depth", f"{drawn.outline.depth:.6g} {unit}", f"{other.outline.depth:.6g} {unit}"),
     )
     return tuple((key, before, after) for key, before, after in pairs if before != after)

@@ -10,7 +10,7 @@ from optimizer.changes import Difference, differences, points_to_accept
 from optimizer.errors import DefectError, JobError
 from optimizer.job import Job
 from optimizer.levers import variants
-from optimizer.measures import Measures, measure
+from optimizer.measures import Band, Measures, measure
 from optimizer.palette import Palette, choose_palette
 from optimizer.problem import Problem
 from optimizer.results import Progress, RatedLayout
@@ -70,9 +70,9 @@ class SectionOptions:
         Every layout that no other beats.
     proved : bool
         Whether the set is complete.
-    order_survives : bool or None
-        Whether options sorted by cost keep their order with low and with high factors; None
-        without prices.
+    order_survives, carbon_order_survives : bool or None
+        Whether options sorted by cost, and by carbon, keep their order with low and with high
+        factors; None without prices.
     """
 
     problem: Problem
@@ -81,6 +81,7 @@ class SectionOptions:
     trade_off: tuple[Option, ...]
     proved: bool
     order_survives: bool | None
+    carbon_order_survives: bool | None
 
     @property
     def section(self) -> Section:
@@ -113,8 +114,8 @@ class OptionsResult:
 
     @property
     def ok(self) -> bool:
-        """Whether every drawn layout passes or has an option that does."""
-        return all(item.trade_off or item.drawn.checked.ok for item in self.sections)
+        """Whether every drawn layout passes its check."""
+        return all(item.drawn.checked.ok for item in self.sections)
 
 
 def options(job: Job, progress: Progress | None = None) -> OptionsResult:
@@ -187,7 +188,7 @@ def section_options(job: Job, problem: Problem) -> SectionOptions:
         found.append((item, checked, measure(section, item.layout, prices)))
     rated = [_rated(checked, item.variant.problem) for item, checked, _ in found]
     figures = [figure for _, _, figure in found]
-    reasons = _reasons(rated, figures)
+    reasons = _reasons(rated, figures, [len(item.variant.changes) for item, _, _ in found])
     return SectionOptions(
         problem=problem,
         drawn=drawn,
@@ -205,7 +206,8 @@ def section_options(job: Job, problem: Problem) -> SectionOptions:
             for number, (item, checked, _) in enumerate(found)
         ),
         proved=proved,
-        order_survives=_order_survives(figures),
+        order_survives=_order_survives([figure.cost for figure in figures]),
+        carbon_order_survives=_order_survives([figure.carbon for figure in figures]),
     )
 
 
@@ -222,8 +224,10 @@ def _tightest(rated: RatedLayout) -> float:
     return min(layer.gap / layer.gap_required for layer in rated.checked.placement.layers)
 
 
-def _reasons(rated: list[RatedLayout], figures: list[Measures]) -> list[tuple[str, ...]]:
-    """What each option is best at; of equals the one of the best practical score."""
+def _reasons(
+    rated: list[RatedLayout], figures: list[Measures], levers: list[int]
+) -> list[tuple[str, ...]]:
+    """What each option is best at, given the number of levers each of them uses."""
 
     def total(number: int) -> float:
         return round(rated[number].score.total, 6)
@@ -246,8 +250,9 @@ def _reasons(rated: list[RatedLayout], figures: list[Measures]) -> list[tuple[st
     for name, eligible, value in aims:
         numbers = [number for number in range(len(rated)) if eligible(number)]
         if numbers:
-            values = [(round(value(n), 6), total(n), n) for n in numbers]
-            best = min(values)[2]
+            # Of equals the one that changes least besides the bars, then the most practical.
+            values = [(round(value(n), 6), levers[n], total(n), n) for n in numbers]
+            best = min(values)[3]
             reasons[best].append(name)
     return [tuple(names) for names in reasons]
 
@@ -257,15 +262,15 @@ def _typical(figure: Measures, name: str) -> float:
     return 0.0 if band is None else band.typical
 
 
-def _order_survives(figures: list[Measures]) -> bool | None:
-    """Whether cost sorts the options alike with low, typical and high factors."""
-    costs = [figure.cost for figure in figures if figure.cost is not None]
-    if not costs:
+def _order_survives(bands: list[Band | None]) -> bool | None:
+    """Whether a figure sorts the options alike with low, typical and high factors."""
+    known = [band for band in bands if band is not None]
+    if not known:
         return None
     columns = (
-        [cost.low for cost in costs],
-        [cost.typical for cost in costs],
-        [cost.high for cost in costs],
+        [band.low for band in known],
+        [band.typical for band in known],
+        [band.high for band in known],
     )
     orders = [
         [n for _, n in sorted((round(value, 6), n) for n, value in enumerate(column))]

@@ -14,7 +14,7 @@ from dataclasses import dataclass, replace
 
 from catalogs import Bar
 from optimizer.candidates import Candidate
-from optimizer.palette_model import choose_size_sets
+from optimizer.palette_model import Identity, SizeSet, choose_size_sets
 from optimizer.problem import Problem
 from optimizer.search import Search
 
@@ -34,7 +34,7 @@ class PaletteChoice:
     total : float
         Sum of score (or mass) times length over the sections.
     saving : float
-        What the last size allowed saves against one fewer; zero for the first.
+        What it saves against the choice of fewer sizes before it; zero for the first.
     """
 
     limit: int
@@ -82,7 +82,7 @@ def choose_palette(problems: tuple[Problem, ...], limit: int) -> Palette:
         The choices, each exact.
     """
     proved = True
-    members: list[tuple[Problem, dict[frozenset[int], Candidate]]] = []
+    members: list[tuple[Problem, dict[SizeSet, Candidate]]] = []
     left_out = []
     for problem in problems:
         found, complete = best_of_size_sets(problem)
@@ -99,7 +99,7 @@ def choose_palette(problems: tuple[Problem, ...], limit: int) -> Palette:
         if choices:
             choice = replace(choice, saving=choices[-1].total - choice.total)
             if choice.saving <= 1e-9:
-                break  # a further size is of no use, and neither is any beyond it
+                continue  # one size more is of no use; two more may be
         choices.append(choice)
     return Palette(
         marks=tuple(problem.section.mark for problem, _ in members),
@@ -109,7 +109,7 @@ def choose_palette(problems: tuple[Problem, ...], limit: int) -> Palette:
     )
 
 
-def best_of_size_sets(problem: Problem) -> tuple[dict[frozenset[int], Candidate], bool]:
+def best_of_size_sets(problem: Problem) -> tuple[dict[SizeSet, Candidate], bool]:
     """Best layout of a section for each set of sizes that a layout may use.
 
     Parameters
@@ -119,14 +119,14 @@ def best_of_size_sets(problem: Problem) -> tuple[dict[frozenset[int], Candidate]
 
     Returns
     -------
-    best : dict of frozenset of int to Candidate
-        From catalogue positions to the best layout that uses no other size.
+    best : dict of SizeSet to Candidate
+        From the sizes to the best layout that uses no other size.
     proved : bool
         Whether every search was completed.
     """
     rules = problem.rules
     ranking = replace(problem.ranking, keep=1, per_pattern=None)
-    best: dict[frozenset[int], Candidate] = {}
+    best: dict[SizeSet, Candidate] = {}
     proved = True
     for number, larger in enumerate(rules.sizes):
         partners = [()] + [
@@ -140,12 +140,12 @@ def best_of_size_sets(problem: Problem) -> tuple[dict[frozenset[int], Candidate]
             found = Search(limited, confirm=False).run()
             proved &= found.proved
             if found.chosen:
-                best[frozenset(bar.position for bar in sizes)] = found.chosen[0]
+                best[frozenset(_identity(bar) for bar in sizes)] = found.chosen[0]
     return best, proved
 
 
 def _choose(
-    members: list[tuple[Problem, dict[frozenset[int], Candidate]]], limit: int
+    members: list[tuple[Problem, dict[SizeSet, Candidate]]], limit: int
 ) -> PaletteChoice | None:
     costs = [
         {sizes: _value(problem, candidate) for sizes, candidate in found.items()}
@@ -155,14 +155,19 @@ def _choose(
     if chosen is None:
         return None
     layouts = tuple(found[sizes] for (_, found), sizes in zip(members, chosen, strict=True))
-    kept = {bar.position: bar for layout in layouts for bar in layout.layout.sizes}
+    kept = {_identity(bar): bar for layout in layouts for bar in layout.layout.sizes}
     return PaletteChoice(
         limit=limit,
-        sizes=tuple(kept[position] for position in sorted(kept)),
+        sizes=tuple(kept[identity] for identity in sorted(kept)),
         layouts=layouts,
         total=math.fsum(row[sizes] for row, sizes in zip(costs, chosen, strict=True)),
         saving=0.0,
     )
+
+
+def _identity(bar: Bar) -> Identity:
+    """What makes two bars the same on a job: sections may take theirs from several tables."""
+    return (round(bar.diameter, 6), bar.designation)
 
 
 def _value(problem: Problem, candidate: Candidate) -> float:

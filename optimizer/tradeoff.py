@@ -130,6 +130,7 @@ def trade_off(variants: Iterable[Variant]) -> tuple[tuple[Unbeaten, ...], bool]:
     front: _Front | None = None
     found: list[Unbeaten] = []
     proved = True
+    work: float | None = None  # the limit is the section's, whatever its variants
     for variant in variants:
         section = variant.problem.section
         if any(not row.ok for row in section_rows(section)):
@@ -139,7 +140,10 @@ def trade_off(variants: Iterable[Variant]) -> tuple[tuple[Unbeaten, ...], bool]:
         members.sort(key=lambda family: (len(family.bars), family.layers))
         for family in members:
             front = front or _Front(len(variant.aims.constant) + 2)
-            proved &= _explore(variant, family, front, found)
+            work = variant.problem.ranking.work_limit if work is None else work
+            spent = _explore(variant, family, front, found, work)
+            proved &= spent is not None
+            work -= spent or 0.0
     if front is None or not found:
         return (), proved
     values = np.array([item.values for item in found])
@@ -156,8 +160,14 @@ def _order(item: Unbeaten) -> tuple[object, ...]:
     return (item.variant.changes, sizes)
 
 
-def _explore(variant: Variant, family: Family, front: _Front, found: list[Unbeaten]) -> bool:
-    """Look for the least totals of a family that nothing known beats; False if stopped."""
+def _explore(
+    variant: Variant, family: Family, front: _Front, found: list[Unbeaten], work: float
+) -> float | None:
+    """Look for the least totals of a family that nothing known beats.
+
+    Returns the work spent, or None if there was not enough of it.
+    """
+    spent = 0.0
     totals = possible_totals(family).counts
     per_bar = np.array([variant.aims.per_bar(bar) for bar in family.bars])
     rest = (float(len(family.bars)), float(family.layers))
@@ -167,17 +177,16 @@ def _explore(variant: Variant, family: Family, front: _Front, found: list[Unbeat
             np.broadcast_to(np.array(rest), (len(totals), 2)),
         )
     )
-    work = variant.problem.ranking.work_limit
     while len(totals):
         open_rows = ~front.beats(values)
         totals, values = totals[open_rows], values[open_rows]
         if not len(totals):
             break
         least = _minimal(totals)
-        listed = enumerate_family(family, None, work, totals=totals[least])
-        work -= listed.work
+        listed = enumerate_family(family, None, work - spent, totals=totals[least])
+        spent += listed.work
         if not listed.complete:
-            return False
+            return None
         judged = Judged(variant.problem.section, family, listed.counts)
         for row in range(len(judged.counts)):
             layout = layout_of(family, judged.counts[row])
@@ -198,7 +207,7 @@ def _explore(variant: Variant, family: Family, front: _Front, found: list[Unbeat
         keep = np.ones(len(totals), dtype=np.bool_)
         keep[least] = False
         totals, values = totals[keep], values[keep]
-    return True
+    return spent
 
 
 def _minimal(totals: NDArray[np.int64]) -> NDArray[np.intp]:

@@ -111,8 +111,10 @@ def trade_off_proof_of(section: SectionOptions) -> str:
         f" beats: none is as good in all of {', '.join(aims)} and better in one."
     )
     if priced:
-        keep = "keep" if section.order_survives else "do NOT keep"
-        text += f" Sorted by cost they {keep} their order with low and high factors."
+        orders = (("cost", section.order_survives), ("carbon", section.carbon_order_survives))
+        for name, survives in orders:
+            keep = "keep" if survives else "do NOT keep"
+            text += f" Sorted by {name} they {keep} their order with low and high factors."
     return text
 
 

@@ -237,6 +237,8 @@ def _compare(seed: int, *, envelope: bool, priced: bool) -> tuple[int, int]:
             case, item, choice, prices, slab, envelope
         )
         for choice, case, items in listed.variants
+        # Without prices a grade as strong as the drawn one is the same steel by another name.
+        if priced or not choice.name or choice.fy != drawn.fy
         for item in items
     }
     expected = _unbeaten(values)
@@ -266,7 +268,6 @@ def test_envelope_with_prices() -> None:
     assert max(count for _, count in found) > 1
 
 
-@pytest.mark.xfail(reason="concrete is an aim of the section and none of its bars: a crash")
 def test_envelope_without_prices() -> None:
     """The same without a price list: the area of concrete is an aim of its own."""
     found = [_compare(seed, envelope=True, priced=False) for seed in range(3000, 3000 + GROUP)]

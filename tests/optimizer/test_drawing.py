@@ -66,7 +66,7 @@ def test_bars_of_both_faces(ink: Ink) -> None:
     checked = drawn("3 #9", "2 #7", opposite=us_layout("2 #5"))
     lines = draw(checked, ink)
     assert [len(row) for row in bars_of(checked, ink)] == [2, 2, 3]
-    large, small, opposite = ink.bars
+    large, small, opposite = ink.bars[0], ink.bars[1], ink.bars[2]
     body = "\n".join(line.split("  layer")[0].split("  opposite")[0] for line in lines[:-1])
     assert (body.count(large), body.count(small), body.count(opposite)) == (3, 2, 2)
     notes = [line for line in lines if "gap" in line]

@@ -205,7 +205,6 @@ def test_the_drawn_value_listed_again_is_no_variant() -> None:
     assert [variant.changes for variant in found] == [(), (("width", "14 in", "16 in"),)]
 
 
-@pytest.mark.xfail(reason="a value listed twice is tried twice")
 @pytest.mark.parametrize(
     ("key", "values"),
     [
@@ -223,7 +222,6 @@ def test_a_value_listed_twice_is_one_variant(key: str, values: str) -> None:
     assert len({variant.changes for variant in found}) == len(found) == 2
 
 
-@pytest.mark.xfail(reason="sizes of the outline are named with four digits")
 @pytest.mark.parametrize(
     ("units", "key", "value", "named"),
     [
@@ -258,7 +256,6 @@ def test_a_stirrup_that_leaves_no_room_is_skipped() -> None:
     assert [variant.problem.section.stirrup.designation for variant in found] == ["#4", "#3"]
 
 
-@pytest.mark.xfail(reason="a stirrup that no section can have is passed over in silence")
 def test_a_stirrup_above_the_table_is_refused() -> None:
     """ACI 318-19 Table 25.3.2 ends at No. 8; a section's own #18 is refused, so is a lever."""
     with pytest.raises(JobError, match=r"options\.stirrups: .*#18"):
@@ -289,7 +286,6 @@ def test_values_of_the_trade_off_have_one_length() -> None:
             assert len(variant.aims.per_bar(bar)) == len(variant.aims.constant) == 3
 
 
-@pytest.mark.xfail(reason="concrete is an aim of the section and none of its bars: a crash")
 @pytest.mark.parametrize("key", ["widths", "depths"])
 @pytest.mark.parametrize("units", ["us", "si"])
 def test_envelope_without_prices(units: str, key: str) -> None:

@@ -229,7 +229,10 @@ def test_reasons_are_right(found: SectionOptions) -> None:
             # Reasons compare figures of six decimals.
             assert value(holder) == pytest.approx(least, rel=0, abs=1e-6)
             equals = [one for one in found.trade_off if value(one) <= least + 1e-7]
-            best = min(one.rated.score.total for one in equals)
+            # Of equals the fewest levers, then the best score.
+            fewest = min(len(one.levers) for one in equals)
+            assert len(holder.levers) == fewest
+            best = min(one.rated.score.total for one in equals if len(one.levers) == fewest)
             assert holder.rated.score.total == pytest.approx(best, rel=0, abs=1e-6)
     assert set(given) <= possible
     assert found.chosen == tuple(option for option in found.trade_off if option.reasons)
@@ -258,16 +261,15 @@ def test_no_layout_of_one_layer_or_one_size() -> None:
     ],
 )
 def test_a_drawn_layout_that_fails_is_said_to(layers: str, broken: set[str]) -> None:
-    """Its rows say which rule; options that pass are found all the same."""
+    """Its rows say which rule, the result is not well; options are found all the same."""
     result = options(_job("us", {}, section={"layers": layers}))
     (found,) = result.sections
     assert {row.id for row in found.drawn.checked.checks if not row.ok} >= broken
     assert not found.drawn.checked.ok
     assert found.trade_off
-    assert result.ok
+    assert not result.ok
 
 
-@pytest.mark.xfail(reason="development of bars that overlap is refused before the check is told")
 @pytest.mark.parametrize("layers", ['["20 #11"]', '["40 #8 + 39 #7", "12 #8"]'])
 def test_a_drawn_layout_whose_bars_overlap(layers: str) -> None:
     """A drawing with far too many bars in a layer fails its gaps, and has options."""
