@@ -10,12 +10,40 @@ import time
 import numpy as np
 
 from engine import BarGroups, flexural_state
+from optimizer import parse_job
+from optimizer.options import options
+from optimizer.palette import choose_palette
 from optimizer.results import rank_section
 from tests.benchmarks.alternatives import Outcome, enumerate_everything, evolve
 from tests.benchmarks.sections import Case, benchmark_set
 
 _RUNS = 5
 _STRENGTHS = 1_000_000
+_WIDEST_COMPARED = 16.0  # [in] of three layers: those of wider webs take minutes to enumerate
+_SECTION = """
+[[section]]
+mark = "S{number}"
+width = "{width} in"
+depth = "{depth} in"
+Mu = "{Mu} kip*ft"
+cover = "1.5 in"
+stirrup = "#4"
+layers = ["4 #8", "2 #8"]
+"""
+_JOB = """
+code = "ACI 318-19"
+[materials]
+fc = "4000 psi"
+steel = "A615-60"
+aggregate = "3/4 in"
+[bars]
+catalog = "astm-inch"
+sizes = ["#6", "#7", "#8", "#9", "#10", "#11"]
+max_layers = 2
+{sections}
+[options]
+{levers}
+"""
 
 
 def demo_seconds() -> list[float]:
@@ -42,6 +70,28 @@ def section_seconds(cases: list[Case]) -> list[float]:
             assert result.proved
         times.append(min(runs))
     return times
+
+
+def options_seconds(levers: str) -> float:
+    """Trade-off set of one section with a drawn layout."""
+    section = _SECTION.format(number=1, width=14, depth=24, Mu=250)
+    job = parse_job(_JOB.format(sections=section, levers=levers))
+    start = time.perf_counter()
+    result = options(job)
+    assert all(item.proved for item in result.sections)
+    return time.perf_counter() - start
+
+
+def palette_seconds(count: int) -> float:
+    """Sizes for a whole job of different sections."""
+    sections = [
+        _SECTION.format(number=n, width=12 + n % 4, depth=22 + n % 5, Mu=150 + 4 * n)
+        for n in range(count)
+    ]
+    job = parse_job(_JOB.format(sections="".join(sections), levers=""))
+    start = time.perf_counter()
+    assert choose_palette(job.problems, 4).proved
+    return time.perf_counter() - start
 
 
 def strength_seconds(case: Case) -> float:
@@ -79,9 +129,17 @@ def main() -> None:
     for case, seconds in zip(cases, times, strict=True):
         print(f"  {1e3 * seconds:6.0f} ms  {case.name}")
     print(f"strength of {_STRENGTHS:,} two-layer layouts: {strength_seconds(cases[4]):.2f} s")
+    print(f"options of a section, bars alone: {options_seconds(''):.2f} s")
+    levers = (
+        'prices = "demo"\ngrades = ["A615-80", "A615-100"]\nstirrups = ["#3"]\n'
+        'widths = ["12 in", "16 in"]\ndepths = ["22 in", "26 in"]'
+    )
+    print(f"options of a section, all levers, 54 variants: {options_seconds(levers):.2f} s")
+    print(f"sizes for a job of 40 sections: {palette_seconds(40):.2f} s")
     print("best practical score: this tool, every layout enumerated, differential evolution")
     for case in cases:
-        if case.problem.ranking.by != "practical":
+        wide = case.problem.section.outline.web > _WIDEST_COMPARED
+        if case.problem.ranking.by != "practical" or (wide and case.problem.rules.max_layers > 2):
             continue
         start = time.perf_counter()
         best = rank_section(case.problem).layouts[0].score.total
