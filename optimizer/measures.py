@@ -7,6 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
+from functools import cache
 from typing import Literal
 
 from catalogs import Bar, PriceList
@@ -84,6 +85,7 @@ def per_bar_aims(
     """
     grade = section.steel.name
 
+    @cache  # every family of a variant asks for the same few sizes
     def aims(bar: Bar) -> tuple[float, ...]:
         plain = (bar.mass, 1.0, bar.mass * bar.relative_labour)
         if prices is None:
