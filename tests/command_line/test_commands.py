@@ -24,7 +24,7 @@ TWO = SMALL_JOB + SMALL_JOB[SMALL_JOB.index("[[section]]") :].replace("B1", "B2"
 # Mu of 150 kip*ft asks for about 1.65 in^2: three #8 have 2.37, two #7 have 1.20.
 GOOD_LAYERS = SMALL_JOB + 'layers = ["3 #8"]\n'
 WEAK_LAYERS = SMALL_JOB + 'layers = ["2 #7"]\n'
-COMMANDS = ("rank", "check", "demo", "new", "bars")
+COMMANDS = ("rank", "check", "options", "demo", "new", "bars")
 
 
 def _lines(outcome: Outcome) -> list[str]:
@@ -52,7 +52,8 @@ def test_help_lists_commands(capsys: pytest.CaptureFixture[str]) -> None:
     [
         ("rank", ["--json", "--show", "--brief", "--only", "--plain"]),
         ("check", ["--json", "--only", "--plain"]),
-        ("demo", ["--json", "--show", "--brief", "--plain", "--job"]),
+        ("options", ["--json", "--html", "--xlsx", "--dxf", "--csv", "--only", "--plain"]),
+        ("demo", ["--json", "--show", "--brief", "--plain", "--job", "--folder"]),
         ("new", ["--units"]),
         ("bars", ["--catalog", "--plain"]),
     ],
@@ -271,6 +272,22 @@ def test_demo_needs_no_input(
     assert "invented" in outcome.out
     assert "No layout meets every rule." in outcome.out
     assert list(tmp_path.iterdir()) == []
+
+
+def test_demo_writes_the_page_of_its_options(
+    tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    """--folder takes a folder that is there; the page is the one of the drawn section."""
+    folder = tmp_path / "pages"
+    missing = run_here(capsys, "demo", "--folder", str(folder))
+    assert (missing.code, missing.out) == (2, "")
+    assert "make the folder first" in missing.err
+    folder.mkdir()
+    assert run_here(capsys, "demo", "--folder", str(folder)).code == 0
+    (page,) = folder.iterdir()
+    text = page.read_text(encoding="utf-8")
+    assert "Options against drawn layouts" in text
+    assert "Drawn: 4 #8 / 2 #8" in text
 
 
 def test_demo_job_can_be_written_but_not_over_a_file(

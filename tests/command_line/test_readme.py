@@ -44,7 +44,7 @@ def test_options_exist(capsys: pytest.CaptureFixture[str]) -> None:
     """Options named in the README are options of the program."""
     named = set(re.findall(r"`(--[a-z]+)", README.read_text(encoding="utf-8")))
     known = set()
-    for command in ("rank", "check", "demo", "new", "bars"):
+    for command in ("rank", "check", "options", "demo", "new", "bars"):
         assert run([command, "--help"]) == 0
         known |= set(re.findall(r"--[a-z]+", capsys.readouterr().out))
     assert named
