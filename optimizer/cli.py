@@ -8,11 +8,12 @@ from __future__ import annotations
 
 import os
 import sys
+from collections.abc import Callable
 from contextlib import suppress
 from dataclasses import replace
 from importlib.resources import files
 from pathlib import Path
-from typing import TYPE_CHECKING, Annotated
+from typing import TYPE_CHECKING, Annotated, NoReturn
 
 import typer
 
@@ -25,7 +26,8 @@ from optimizer.job import Job, parse_job, read_job
 from optimizer.outputs import OutputFiles, ReaderGoneError, data_view, progress_line
 
 if TYPE_CHECKING:
-    pass
+    from optimizer.json_output import Result
+    from optimizer.views import View
 
 app = typer.Typer(
     name="cagewright",
@@ -126,19 +128,29 @@ def rank_command(
     _rank(_selected(read_job(job_file), only), files, show, brief, plain)
 
 
-def _rank(job: Job, files: OutputFiles, show: int | None, brief: bool, plain: bool) -> None:
+def _deliver(
+    job: Job, result: Result, files: OutputFiles, plain: bool, show: Callable[[View], None]
+) -> NoReturn:
+    """Write the files, print the report unless JSON takes its place, end with the exit code."""
+    if not files.write(result):
+        view = data_view(plain=plain)
+        view.title(job.title, job.edition.name)
+        show(view)
+        view.footer()
+    raise typer.Exit(0 if result.ok else 1)
+
+
+def _rank(job: Job, files: OutputFiles, show: int | None, brief: bool, plain: bool) -> NoReturn:
     from optimizer.results import rank
 
     with progress_line() as tell:
         result = rank(job, tell)
-    if files.write(result):
-        raise typer.Exit(0 if result.ok else 1)
-    view = data_view(plain=plain)
-    view.title(job.title, job.edition.name)
-    for section in result.sections:
-        view.ranked(section, show=show, brief=brief)
-    view.footer()
-    raise typer.Exit(0 if result.ok else 1)
+
+    def report(view: View) -> None:
+        for section in result.sections:
+            view.ranked(section, show=show, brief=brief)
+
+    _deliver(job, result, files, plain, report)
 
 
 @app.command("check")
@@ -159,17 +171,16 @@ def check_command(
     files.check(job_file)
     job = _selected(read_job(job_file), only)
     result = check(job)
-    if files.write(result):
-        raise typer.Exit(0 if result.ok else 1)
-    view = data_view(plain=plain)
-    view.title(job.title, job.edition.name)
-    for section in result.sections:
-        view.checked_section(section)
-    skipped = len(job.problems) - len(result.sections)
-    if skipped:
-        view.say(f"{skipped} of {len(job.problems)} sections give no layers and were not checked.")
-    view.footer()
-    raise typer.Exit(0 if result.ok else 1)
+
+    def report(view: View) -> None:
+        for section in result.sections:
+            view.checked_section(section)
+        count = len(job.problems)
+        skipped = count - len(result.sections)
+        if skipped:
+            view.say(f"{skipped} of {count} sections give no layers and were not checked.")
+
+    _deliver(job, result, files, plain, report)
 
 
 @app.command("options")
@@ -189,19 +200,13 @@ def options_command(
     _options(_selected(read_job(job_file), only), files, plain)
 
 
-def _options(job: Job, files: OutputFiles, plain: bool) -> None:
+def _options(job: Job, files: OutputFiles, plain: bool) -> NoReturn:
     from optimizer.options import options
     from optimizer.options_view import show_options
 
     with progress_line() as tell:
         result = options(job, tell)
-    if files.write(result):
-        raise typer.Exit(0 if result.ok else 1)
-    view = data_view(plain=plain)
-    view.title(job.title, job.edition.name)
-    show_options(view, result)
-    view.footer()
-    raise typer.Exit(0 if result.ok else 1)
+    _deliver(job, result, files, plain, lambda view: show_options(view, result))
 
 
 def _packaged(name: str) -> str:
