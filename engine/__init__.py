@@ -1,6 +1,7 @@
 """Section mechanics and code checks of reinforced concrete beams; needs no solver."""
 
-from engine.assessment import Assessment, Batch, assess, required_share
+from engine.assessment import Assessment, assess, required_share
+from engine.batch import Batch
 from engine.check_row import Check, State
 from engine.checks import CheckedLayout, check_layout, check_layouts
 from engine.confinement import Confinement, confinement_of, is_top_bar, meets_short_form

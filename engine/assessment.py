@@ -7,16 +7,12 @@ implementation. What depends on the bars' horizontal positions (clear gaps, spac
 
 from __future__ import annotations
 
-from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
 
-from catalogs import Bar
-from engine.crack_control import WITHOUT_ANALYSIS
-from engine.cracked_section import cracked_section
-from engine.layouts import Layout
+from engine.batch import Batch, Stacked, stacked_bars
 from engine.materials import EPS_CU
 from engine.minimum_steel import EXEMPTION, minimum_area
 from engine.outlines import FloatArray
@@ -30,63 +26,6 @@ _ROOT_PRECISION = 1e-10  # relative error of the moment at the required area
 _STEPS = 60
 _LARGEST_SHARE = 16.0  # of a layout's own area that more of the same bars is looked for
 _HALVINGS = 45
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Batch:
-    """Many layouts made of a few sizes.
-
-    Attributes
-    ----------
-    bars : tuple of Bar, length s
-        Sizes that occur.
-    counts : ndarray of int, shape (n, l, s)
-        Number of bars of each size in each layer; layer 1 first, missing layers are zero.
-    """
-
-    bars: tuple[Bar, ...]
-    counts: NDArray[np.int64]
-
-    @classmethod
-    def of(cls, layouts: Sequence[Layout]) -> Batch:
-        """Gather layouts.
-
-        Parameters
-        ----------
-        layouts : sequence of Layout
-            At least one.
-
-        Returns
-        -------
-        Batch
-            The same layouts in order.
-        """
-        found = {bar.position: bar for layout in layouts for bar in layout.sizes}
-        bars = tuple(found[position] for position in sorted(found, reverse=True))
-        column = {bar.position: index for index, bar in enumerate(bars)}
-        layers = max(len(layout.layers) for layout in layouts)
-        counts = np.zeros((len(layouts), layers, len(bars)), dtype=np.int64)
-        for row, layout in enumerate(layouts):
-            for number, layer in enumerate(layout.layers):
-                for bar, count in layer.groups:
-                    counts[row, number, column[bar.position]] = count
-        return cls(bars=bars, counts=counts)
-
-    def quantity(self, values: Sequence[float]) -> FloatArray:
-        """Sum a value of each size over all bars.
-
-        Parameters
-        ----------
-        values : sequence of float, length s
-            Value of one bar of each size.
-
-        Returns
-        -------
-        ndarray, shape (n,)
-            Totals.
-        """
-        total: FloatArray = self.counts.sum(axis=1) @ np.asarray(values, dtype=np.float64)
-        return total
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -183,59 +122,7 @@ class Assessment:
         )
 
 
-@dataclass(frozen=True, slots=True, kw_only=True)
-class _Stacked:
-    """Bars of a batch with their depths; the first l*s columns are the batch's own."""
-
-    groups: BarGroups
-    own: int
-    dt: FloatArray
-    d: FloatArray
-    height: FloatArray
-
-
-def _stacked(section: Section, batch: Batch) -> _Stacked:
-    counts = batch.counts
-    rows, layers, sizes = counts.shape
-    diameter = np.array([bar.diameter for bar in batch.bars])
-    area = np.array([bar.area for bar in batch.bars])
-    tallest = np.where(counts > 0, diameter, 0.0).max(axis=2)
-    rise = np.where(tallest > 0.0, tallest + section.layer_gap, 0.0)
-    bottom = section.bar_face + np.concatenate(
-        (np.zeros((rows, 1)), np.cumsum(rise, axis=1)[:, :-1]), axis=1
-    )
-    depth = section.outline.depth - bottom[:, :, None] - diameter / 2
-    steel = counts * area
-    total = steel.sum(axis=(1, 2))
-    flat_area = steel.reshape(rows, layers * sizes)
-    flat_depth = depth.reshape(rows, layers * sizes)
-    flat_diameter = np.tile(diameter, (rows, layers))
-    if section.count_opposite and section.opposite is not None:
-        extra = _opposite_groups(section, section.opposite, rows)
-        flat_area = np.concatenate((flat_area, extra.area), axis=1)
-        flat_depth = np.concatenate((flat_depth, extra.depth), axis=1)
-        flat_diameter = np.concatenate((flat_diameter, extra.diameter), axis=1)
-    return _Stacked(
-        groups=BarGroups(area=flat_area, depth=flat_depth, diameter=flat_diameter),
-        own=layers * sizes,
-        dt=(steel[:, 0] * depth[:, 0]).sum(axis=1) / steel[:, 0].sum(axis=1),
-        d=(steel * depth).sum(axis=(1, 2)) / total,
-        height=(np.where(tallest > 0.0, bottom + tallest, 0.0)).max(axis=1),
-    )
-
-
-def _opposite_groups(section: Section, opposite: Layout, rows: int) -> BarGroups:
-    """Bars at the compression face: their depths count from that face."""
-    face = _stacked(section.opposite_face(), Batch.of([opposite]))
-    depth = section.outline.depth - face.groups.depth
-    return BarGroups(
-        area=np.tile(face.groups.area, (rows, 1)),
-        depth=np.tile(depth, (rows, 1)),
-        diameter=np.tile(face.groups.diameter, (rows, 1)),
-    )
-
-
-def _scaled(stacked: _Stacked, share: FloatArray, rows: NDArray[np.intp]) -> BarGroups:
+def _scaled(stacked: Stacked, share: FloatArray, rows: NDArray[np.intp]) -> BarGroups:
     """The layouts' own bars with their areas scaled; bars opposite stay as they are."""
     area = stacked.groups.area[rows].copy()
     area[:, : stacked.own] *= share[:, None]
@@ -273,7 +160,7 @@ def assess(section: Section, batch: Batch) -> Assessment:
     9.6.1.3 asks for As >= 4/3 of what analysis requires: with phi Mn rising with the area,
     that is the same as three quarters of every bar being strong enough.
     """
-    stacked = _stacked(section, batch)
+    stacked = stacked_bars(section, batch)
     own_area = stacked.groups.area[:, : stacked.own].sum(axis=1)
     state, eps_t, factor, strength = _design_strength(section, stacked.groups, stacked.dt)
     needed = section.demand * (1 - ROUNDING)
@@ -318,7 +205,7 @@ def required_share(section: Section, batch: Batch) -> FloatArray:
         Required over provided area; infinite where no amount of the same bars reaches Mu within
         the permitted strains. [-]
     """
-    stacked = _stacked(section, batch)
+    stacked = stacked_bars(section, batch)
     rows = np.arange(len(stacked.d))
     limit = least_strain(section.steel, tension_controlled=section.tension_controlled)
 
@@ -357,28 +244,3 @@ def required_share(section: Section, batch: Batch) -> FloatArray:
         low, high = np.where(up, low, share), np.where(up, share, high)
         below, above = np.where(up, below / 2, value), np.where(up, value, above / 2)
     return np.where(found, share, np.inf)
-
-
-def service_stress(section: Section, batch: Batch) -> FloatArray:
-    """Stress, at service, of the bars nearest the tension face, 24.3.2.1.
-
-    Parameters
-    ----------
-    section : Section
-        Section, with its service moment where that is known.
-    batch : Batch
-        Layouts at the section's tension face.
-
-    Returns
-    -------
-    ndarray, shape (n,)
-        From the elastic cracked section under Ms, at dt; or 2/3 fy without Ms. [psi or MPa]
-    """
-    if section.Ms is None:
-        return np.full(len(batch.counts), WITHOUT_ANALYSIS * section.steel.fy)
-    stacked = _stacked(section, batch)
-    n = section.steel.Es / section.concrete.Ec
-    transformed = n * stacked.groups.area
-    transformed[:, stacked.own :] *= (n - 1.0) / n
-    cracked = cracked_section(section.profile, transformed, stacked.groups.depth)
-    return n * abs(section.Ms) * (stacked.dt - cracked.x) / cracked.Icr

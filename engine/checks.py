@@ -7,13 +7,15 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 
 from engine import capacity_checks, crack_checks, detailing_checks
-from engine.assessment import Assessed, Batch, assess, required_share, service_stress
+from engine.assessment import Assessed, assess, required_share
+from engine.batch import Batch
 from engine.check_row import Check
 from engine.crack_control import largest_spacing
 from engine.errors import LayoutError
 from engine.layouts import Layout
 from engine.placement import Placement, place
 from engine.sections import Section
+from engine.service import service_stress
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

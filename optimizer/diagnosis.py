@@ -15,9 +15,10 @@ from engine import (
     check_layout,
     place,
 )
-from engine.assessment import ROUNDING, service_stress
+from engine.assessment import ROUNDING
 from engine.crack_control import largest_spacing
 from engine.detailing_checks import section_rows
+from engine.service import service_stress
 from optimizer.conditions import envelope
 from optimizer.families import Empty, Family, all_families, family_of
 from optimizer.model import blocking_rules, enumerate_family

@@ -19,11 +19,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 from engine import Batch, Layout, Placement, Section, assess, place
-from engine.assessment import ROUNDING, service_stress
+from engine.assessment import ROUNDING
 from engine.crack_control import largest_spacing
 from engine.detailing_checks import section_rows
 from engine.layouts import Layer
 from engine.outlines import FloatArray
+from engine.service import service_stress
 from optimizer.candidates import Candidate, short_list
 from optimizer.conditions import SLACK, envelope
 from optimizer.families import Family, families

@@ -11,8 +11,9 @@ from numpy.typing import NDArray
 from scipy.optimize import Bounds, differential_evolution
 
 from engine import Batch, assess, place
-from engine.assessment import ROUNDING, service_stress
+from engine.assessment import ROUNDING
 from engine.crack_control import largest_spacing
+from engine.service import service_stress
 from optimizer.conditions import envelope
 from optimizer.families import Family, families
 from optimizer.problem import Problem

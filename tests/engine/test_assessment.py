@@ -18,7 +18,7 @@ from engine import (
     place,
     required_share,
 )
-from engine.assessment import service_stress
+from engine.service import service_stress
 from tests.engine.builders import si_layout, si_section, us_layout, us_section
 
 BLOCK = 3400.0 * 14.0  # 0.85 f'c b of the 14 in web, f'c = 4000 psi
