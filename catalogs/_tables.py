@@ -19,6 +19,7 @@ from catalogs.errors import TableError
 
 MAX_BYTES = 200_000
 MAX_ROWS = 500
+_BYTES_PER_ROW = MAX_BYTES // MAX_ROWS
 
 # Python's own float() also takes "1_000", "nan" and digits of other scripts: none is meant here.
 _NUMBER = re.compile(r"[+-]?(\d+(\.\d*)?|\.\d+)([eE][+-]?\d+)?", re.ASCII)
@@ -27,7 +28,7 @@ _CONTROL = re.compile(r"[\x00-\x09\x0b\x0c\x0e-\x1f\x7f-\x9f]")
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Column:
-    """A column that a table must have, with the entries its units row may show."""
+    """A column that a table must have, with the entries its units row may show; none for any."""
 
     name: str
     units: tuple[str, ...] = ("-",)
@@ -104,8 +105,8 @@ def read_builtin(file: str, columns: Sequence[Column]) -> Table:
     return parse(file, data, columns)
 
 
-def read_file(path: Path, columns: Sequence[Column]) -> Table:
-    """Read a table of the user.
+def read_file(path: Path, columns: Sequence[Column], most_rows: int = MAX_ROWS) -> Table:
+    """Read a table of the user, of so many data rows at most.
 
     Raises
     ------
@@ -120,13 +121,13 @@ def read_file(path: Path, columns: Sequence[Column]) -> Table:
             found = "is not a regular file" if path.exists() else "does not exist"
             raise table_error(file, f"{found}; allowed: the path of a CSV file")
         with path.open("rb") as stream:
-            data = stream.read(MAX_BYTES + 1)
+            data = stream.read(most_rows * _BYTES_PER_ROW + 1)
     except OSError as error:
         raise table_error(file, f"cannot be read: {error.strerror}") from error
-    return parse(file, data, columns)
+    return parse(file, data, columns, most_rows)
 
 
-def parse(file: str, data: bytes, columns: Sequence[Column]) -> Table:
+def parse(file: str, data: bytes, columns: Sequence[Column], most_rows: int = MAX_ROWS) -> Table:
     """Turn the bytes of a CSV file into a table.
 
     Parameters
@@ -137,6 +138,8 @@ def parse(file: str, data: bytes, columns: Sequence[Column]) -> Table:
         Its content.
     columns : sequence of Column
         The columns it must have, in any order, and no others.
+    most_rows : int
+        Most data rows; the size of the file is bounded with them.
 
     Returns
     -------
@@ -148,7 +151,7 @@ def parse(file: str, data: bytes, columns: Sequence[Column]) -> Table:
     TableError
         If it is not such a table.
     """
-    lines = _split(file, _decode(file, data))
+    lines = _split(file, _decode(file, data, most_rows * _BYTES_PER_ROW), most_rows)
     if not lines:
         raise table_error(file, f"is empty; allowed: a header row {_header(columns)}")
     names = _check_header(file, *lines[0], columns)
@@ -166,9 +169,9 @@ def parse(file: str, data: bytes, columns: Sequence[Column]) -> Table:
     return Table(file=file, units=units, units_row=lines[1][0], rows=rows)
 
 
-def _decode(file: str, data: bytes) -> str:
-    if len(data) > MAX_BYTES:
-        raise table_error(file, f"is larger than allowed; allowed: {MAX_BYTES // 1000} kB")
+def _decode(file: str, data: bytes, most_bytes: int) -> str:
+    if len(data) > most_bytes:
+        raise table_error(file, f"is larger than allowed; allowed: {most_bytes // 1000} kB")
     try:
         # Spreadsheets put a byte order mark in front of UTF-8; it is no part of the header.
         text = data.decode("utf-8-sig")
@@ -185,7 +188,7 @@ def _decode(file: str, data: bytes) -> str:
     return text
 
 
-def _split(file: str, text: str) -> list[tuple[int, list[str]]]:
+def _split(file: str, text: str, most_rows: int) -> list[tuple[int, list[str]]]:
     """Cut the text into numbered rows of trimmed cells, leaving blank lines out."""
     reader = csv.reader(io.StringIO(text, newline=""), strict=True)
     lines: list[tuple[int, list[str]]] = []
@@ -196,8 +199,8 @@ def _split(file: str, text: str) -> list[tuple[int, list[str]]]:
                 raise table_error(file, problem, "look for a lone quote", row=reader.line_num)
             if cells:
                 lines.append((reader.line_num, [cell.strip() for cell in cells]))
-            if len(lines) > MAX_ROWS + 2:
-                problem = f"more data rows than allowed; allowed: {MAX_ROWS}"
+            if len(lines) > most_rows + 2:
+                problem = f"more data rows than allowed; allowed: {most_rows}"
                 raise table_error(file, problem, row=reader.line_num)
     except csv.Error as error:
         problem = f"is not CSV ({error}); allowed: cells separated by commas"
@@ -230,7 +233,7 @@ def _check_units(
     units = _pair(file, number, cells, names)
     for column in columns:
         unit = units[column.name]
-        if unit not in column.units:
+        if column.units and unit not in column.units:
             problem = f"{shown(unit)} is not a unit of it; allowed: {' or '.join(column.units)}"
             hint = "the row below the header states the units"
             raise table_error(file, problem, hint, row=number, column=column.name)

@@ -57,36 +57,41 @@ _UNITS: dict[str, dict[str, Fraction]] = {
         "GPa": Fraction(1_000_000_000),
         "N/mm^2": Fraction(1_000_000),
     },
+    "force_per_length": {
+        "kip/ft": _KIP / _FOOT,
+        "lbf/ft": _POUND_FORCE / _FOOT,
+        "lbf/in": _POUND_FORCE / _INCH,
+        "kN/m": Fraction(1000),
+        "N/m": Fraction(1),
+        "N/mm": Fraction(1000),
+    },
+    # Weight of a volume, as loads count it; a mass per volume is not taken.
+    "density": {
+        "lbf/ft^3": _POUND_FORCE / _FOOT**3,
+        "lbf/in^3": _POUND_FORCE / _INCH**3,
+        "kN/m^3": Fraction(1000),
+        "N/mm^3": Fraction(10**9),
+    },
 }
 
-# Other spellings met on drawings and in calculations; keys are compared without case.
-_ALIASES = {
-    '"': "in",
-    "inch": "in",
-    "inches": "in",
-    "'": "ft",
-    "foot": "ft",
-    "feet": "ft",
-    "lb": "lbf",
-    "kips": "kip",
-    "k": "kip",
-    "k*ft": "kip*ft",
-    "k*in": "kip*in",
-    "ft*k": "kip*ft",
-    "ft*kip": "kip*ft",
-    "in*kip": "kip*in",
-    "kips*ft": "kip*ft",
-    "ft*kips": "kip*ft",
-    "kips*in": "kip*in",
-    "in*kips": "kip*in",
-    "lb*ft": "lbf*ft",
-    "ft*lb": "lbf*ft",
-    "ft*lbf": "lbf*ft",
-    "lb*in": "lbf*in",
-    "in*lb": "lbf*in",
-    "in*lbf": "lbf*in",
-    "n/mm2": "N/mm^2",
+# Other spellings met on drawings and in calculations; compared without case.
+_SPELT_ALSO = {
+    "in": '" inch inches',
+    "ft": "' foot feet",
+    "lbf": "lb",
+    "kip": "kips k",
+    "kip*ft": "k*ft ft*k ft*kip kips*ft ft*kips",
+    "kip*in": "k*in in*kip kips*in in*kips",
+    "lbf*ft": "lb*ft ft*lb ft*lbf",
+    "lbf*in": "lb*in in*lb in*lbf",
+    "N/mm^2": "n/mm2",
+    "kip/ft": "k/ft kips/ft klf",
+    "lbf/ft": "lb/ft plf",
+    "lbf/in": "lb/in",
+    "lbf/ft^3": "pcf lb/ft^3 lb/ft3 lbf/ft3",
+    "kN/m^3": "kn/m3",
 }
+_ALIASES = {alias: unit for unit, text in _SPELT_ALSO.items() for alias in text.split()}
 _BY_LOWER = {name.lower(): name for kind in _UNITS.values() for name in kind}
 # "MN" and "mN", "MPa" and "mPa" differ by case alone; only the spelling of the table is taken.
 _CASE_MATTERS = {"MN", "MN*m", "MPa"}
@@ -143,30 +148,48 @@ class UnitSystem:
             return value
         units = _UNITS[kind]
         ratio = units[self.inner[kind]] / units[self.trade[kind]]
-        # Dividing by the whole number keeps round figures round (4920000 lbf*in -> 410 kip*ft).
-        return value / float(1 / ratio) if ratio < 1 else value * float(ratio)
+        # Two whole numbers keep round figures round (4920000 lbf*in -> 410 kip*ft).
+        return value * ratio.numerator / ratio.denominator
 
 
 US = UnitSystem(
     name="us",
-    inner={"length": "in", "force": "lbf", "moment": "lbf*in", "stress": "psi"},
+    inner={
+        "length": "in",
+        "force": "lbf",
+        "moment": "lbf*in",
+        "stress": "psi",
+        "force_per_length": "lbf/in",
+        "density": "lbf/in^3",
+    },
     trade={
         "length": "in",
         "force": "kip",
         "moment": "kip*ft",
         "stress": "psi",
+        "force_per_length": "kip/ft",
+        "density": "lbf/ft^3",
         "area": "in^2",
         "mass_per_length": "lb/ft",
     },
 )
 SI = UnitSystem(
     name="si",
-    inner={"length": "mm", "force": "N", "moment": "N*mm", "stress": "MPa"},
+    inner={
+        "length": "mm",
+        "force": "N",
+        "moment": "N*mm",
+        "stress": "MPa",
+        "force_per_length": "N/mm",
+        "density": "N/mm^3",
+    },
     trade={
         "length": "mm",
         "force": "kN",
         "moment": "kN*m",
         "stress": "MPa",
+        "force_per_length": "kN/m",
+        "density": "kN/m^3",
         "area": "mm^2",
         "mass_per_length": "kg/m",
     },
@@ -196,7 +219,8 @@ def plain(value: float) -> str:
 
 def _normal_unit(text: str) -> str:
     """Bring a unit's spelling to the table's: ``kip-ft``, ``kip ft`` and ``k.ft`` are one."""
-    joined = re.sub(r"\s*[-*·⋅.\s]\s*", "*", text.strip())
+    joined = re.sub(r"\s*/\s*", "/", text.strip())
+    joined = re.sub(r"\s*[-*·⋅.\s]\s*", "*", joined)
     if joined in _CASE_MATTERS:
         return joined
     lower = joined.lower()
@@ -226,8 +250,49 @@ def _example(kind: str, system: UnitSystem) -> str:
         ("moment", "si"): '"550 kN*m"',
         ("stress", "us"): '"4000 psi" or "60 ksi"',
         ("stress", "si"): '"28 MPa"',
+        ("force", "us"): '"12 kip"',
+        ("force", "si"): '"50 kN"',
+        ("force_per_length", "us"): '"1.2 kip/ft" or "800 plf"',
+        ("force_per_length", "si"): '"18 kN/m"',
+        ("density", "us"): '"150 pcf"',
+        ("density", "si"): '"24 kN/m^3"',
     }
-    return examples.get((kind, system.name), "a number with its unit")
+    return examples[kind, system.name]
+
+
+def _words(kind: str) -> str:
+    """Name of a kind in a sentence."""
+    return {"force_per_length": "force per length", "density": "weight per volume"}.get(kind, kind)
+
+
+def unit_named(text: str, kind: str, system: UnitSystem) -> str:
+    """Find a unit by any of its spellings, as a table states it over a column.
+
+    Parameters
+    ----------
+    text : str
+        For example ``kip-ft``.
+    kind : str
+        Kind of quantity that it has to be a unit of.
+    system : UnitSystem
+        System that the example in a message is written in.
+
+    Returns
+    -------
+    str
+        The unit as `parse_quantity` takes it for plain numbers.
+
+    Raises
+    ------
+    QuantityError
+        If it is no unit of that kind.
+    """
+    unit = _normal_unit(text.translate(_SPELLINGS))
+    if unit not in _UNITS[kind]:
+        example = system.trade[kind]
+        expected = f"expected a unit of {_words(kind)} such as {example}"
+        raise QuantityError(_wrong_unit(text, unit, kind, expected))
+    return unit
 
 
 def _show(text: object) -> str:
@@ -246,7 +311,7 @@ def parse_quantity(value: object, kind: str, system: UnitSystem, plain_unit: str
     value : object
         Text with a unit, or a plain number in `plain_unit`.
     kind : str
-        ``length``, ``moment`` or ``stress``.
+        ``length``, ``force``, ``moment``, ``stress``, ``force_per_length`` or ``density``.
     system : UnitSystem
         System of the result.
     plain_unit : str
@@ -264,7 +329,7 @@ def parse_quantity(value: object, kind: str, system: UnitSystem, plain_unit: str
         is not finite.
     """
     target = _UNITS[kind][system.inner[kind]]
-    expected = f"expected a {kind} such as {_example(kind, system)}"
+    expected = f"expected a {_words(kind)} such as {_example(kind, system)}"
     if isinstance(value, bool) or not isinstance(value, int | float | str):
         msg = f"got {_show(value)}; {expected}"
         raise QuantityError(msg)
@@ -274,7 +339,7 @@ def parse_quantity(value: object, kind: str, system: UnitSystem, plain_unit: str
             raise QuantityError(msg)
         return _sized(Fraction(value) * _UNITS[kind][plain_unit] / target, value, expected)
 
-    text = value.strip().translate(_SPELLINGS).replace("mm²", "mm^2")
+    text = value.strip().translate(_SPELLINGS).replace("mm²", "mm^2").replace("m³", "m^3")
     text = text[:-1] if text.endswith(("in.", "ft.")) else text
     if not text or len(text) > _LONGEST:
         msg = f"got {_show(value)}; {expected}"
@@ -308,7 +373,7 @@ def _sized(size: Fraction, value: object, expected: str) -> float:
 def _wrong_unit(value: str, unit: str, kind: str, expected: str) -> str:
     for other, table in _UNITS.items():
         if unit in table:
-            return f"got {_show(value)}, a {other}; {expected}"
+            return f"got {_show(value)}, a {_words(other)}; {expected}"
     allowed = ", ".join(_UNITS[kind])
     message = f"got {_show(value)} with the unknown unit {_show(unit)}; {expected} ({allowed})"
     near = difflib.get_close_matches(unit, _UNITS[kind], n=1)

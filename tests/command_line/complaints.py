@@ -10,6 +10,14 @@ _LONGEST = 1500  # characters: fits on one screen, whatever the input was
 _PLACE = r"(?:^|[:,] )(?:\w+\.)*{key}(?:\.\w+)*: "
 
 
+def assert_names(text: str, key: str) -> None:
+    """Assert that a message names the key in its place, or the syntax where that is at fault."""
+    if key == "TOML":
+        assert "not valid TOML" in text
+    else:
+        assert re.search(_PLACE.format(key=key), text), f"{key} is not named: {text}"
+
+
 def assert_refused(outcome: Outcome, key: str, *, file: str = "", hint: str | None = None) -> None:
     """Assert exit code 2 and one short message that names the key in its place.
 
@@ -29,10 +37,7 @@ def assert_refused(outcome: Outcome, key: str, *, file: str = "", hint: str | No
     assert all(line.startswith("hint: ") for line in more), "more than one message"
     assert all(line.isprintable() for line in (first, *more)), "control characters came through"
     text = first.replace(file, "FILE") if file else first
-    if key == "TOML":
-        assert "not valid TOML" in text
-    else:
-        assert re.search(_PLACE.format(key=key), text), f"{key} is not named: {text}"
+    assert_names(text, key)
     if hint is not None:
         place = message.find("hint: ")
         assert place >= 0, f"no hint in: {message}"

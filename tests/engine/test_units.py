@@ -9,7 +9,7 @@ import pint
 import pytest
 
 from engine import QuantityError, parse_quantity
-from engine.units import _UNITS, SI, SYSTEMS, US, UnitSystem, plain
+from engine.units import _UNITS, SI, SYSTEMS, US, UnitSystem, plain, unit_named
 
 PINT: pint.UnitRegistry[float] = pint.UnitRegistry()
 # Every spelling of the table beside the same unit in pint, a general library of units.
@@ -34,6 +34,20 @@ PINT_NAMES = {
         "MPa": "MPa",
         "GPa": "GPa",
         "N/mm^2": "N/mm**2",
+    },
+    "force_per_length": {
+        "kip/ft": "kip/foot",
+        "lbf/ft": "lbf/foot",
+        "lbf/in": "lbf/inch",
+        "kN/m": "kN/m",
+        "N/m": "N/m",
+        "N/mm": "N/mm",
+    },
+    "density": {
+        "lbf/ft^3": "lbf/foot**3",
+        "lbf/in^3": "lbf/inch**3",
+        "kN/m^3": "kN/m**3",
+        "N/mm^3": "N/mm**3",
     },
 }
 EVERY_UNIT = [(kind, unit) for kind, units in PINT_NAMES.items() for unit in units]
@@ -178,6 +192,60 @@ def test_us_stress_and_force(text: str, kind: str, expected: float) -> None:
     assert parse_quantity(text, kind, US, US.trade[kind]) == expected
 
 
+@pytest.mark.parametrize(
+    ("text", "kind", "system", "expected"),
+    [
+        ("1.2 kip/ft", "force_per_length", US, 100.0),
+        ("1.2 kips/ft", "force_per_length", US, 100.0),
+        ("1.2 k/ft", "force_per_length", US, 100.0),
+        ("1.2 KLF", "force_per_length", US, 100.0),
+        ("1.2 kip / ft", "force_per_length", US, 100.0),
+        ("1200 lbf/ft", "force_per_length", US, 100.0),
+        ("1200 lb/ft", "force_per_length", US, 100.0),
+        ("1200 plf", "force_per_length", US, 100.0),
+        ("100 lb/in", "force_per_length", US, 100.0),
+        ("18 kN/m", "force_per_length", SI, 18.0),
+        ("18 kn/m", "force_per_length", SI, 18.0),
+        ("18 N/mm", "force_per_length", SI, 18.0),
+        ("18000 N/m", "force_per_length", SI, 18.0),
+        ("172.8 pcf", "density", US, 0.1),
+        ("172.8 lb/ft^3", "density", US, 0.1),
+        ("172.8 lb/ft3", "density", US, 0.1),
+        ("172.8 lbf/ft3", "density", US, 0.1),
+        ("24 kN/m^3", "density", SI, 24e-6),
+        ("24 kN/m3", "density", SI, 24e-6),
+        ("24 kN/m\u00b3", "density", SI, 24e-6),
+    ],
+)
+def test_line_loads_and_weights(text: str, kind: str, system: UnitSystem, expected: float) -> None:
+    """Loads along a beam and the weight of concrete, in the trade's spellings."""
+    assert parse_quantity(text, kind, system, system.trade[kind]) == expected
+
+
+@pytest.mark.parametrize(
+    ("text", "kind", "unit"),
+    [
+        *((" kip-ft ", "moment", "kip*ft"), ("k-ft", "moment", "kip*ft"), ("FT", "length", "ft")),
+        *(("klf", "force_per_length", "kip/ft"), ("kNm", "moment", None), ("MN", "force", "MN")),
+        *(("mN", "force", None), ("ft", "moment", None), ("", "length", None)),
+    ],
+)
+def test_unit_over_a_column(text: str, kind: str, unit: str | None) -> None:
+    """A unit alone is found by the same spellings, or refused with those allowed."""
+    if unit is not None:
+        assert unit_named(text, kind, US) == unit
+        return
+    with pytest.raises(QuantityError, match=rf"expected a unit of {kind} such as"):
+        unit_named(text, kind, US)
+
+
+@pytest.mark.parametrize("kip_per_foot", [-1.2, -0.001])
+def test_sign_of_a_line_load_is_kept(kip_per_foot: float) -> None:
+    """Whether a sign makes sense is for the key to say."""
+    found = parse_quantity(f"{kip_per_foot} kip/ft", "force_per_length", US, "kip/ft")
+    assert found == pytest.approx(kip_per_foot * 1000 / 12, rel=1e-15)
+
+
 @pytest.mark.parametrize(("value", "unit", "expected"), [(24, "in", 24.0), (26.5, "ft", 318.0)])
 def test_plain_numbers_are_in_the_unit_of_their_key(
     value: float, unit: str, expected: float
@@ -241,6 +309,7 @@ def test_unknown_unit(text: str, unit: str) -> None:
         ("410 kipft", "moment", r"kip\*ft"),
         ("28 Mpa", "stress", "MPa"),
         ("4 kpsi", "stress", "psi"),
+        ("1 kip/f", "force_per_length", "kip/ft"),
     ],
 )
 def test_unknown_unit_with_a_near_one(text: str, kind: str, hint: str) -> None:
@@ -265,13 +334,18 @@ def test_milli_is_not_mega(text: str, kind: str) -> None:
         ("24 in", "moment", "length"),
         ("24 kip*ft", "stress", "moment"),
         ("24 kip", "moment", "force"),
+        ("24 kip", "force_per_length", "force"),
+        ("24 plf", "force", "force per length"),
+        ("24 pcf", "force", "weight per volume"),
         ("26 ft 6 in", "stress", None),
     ],
 )
 def test_unit_of_another_kind(text: str, asked: str, given: str | None) -> None:
     """The kind that the unit has is named beside the kind that was expected."""
     problem = rf"'{re.escape(text)}', a {given}; " if given else r"unknown unit 'ft\*6\*in'; "
-    with pytest.raises(QuantityError, match=rf"{problem}expected a {asked} such as"):
+    with pytest.raises(
+        QuantityError, match=rf"{problem}expected a {asked.replace('_', ' ')} such as"
+    ):
         parse_quantity(text, asked, US, US.trade[asked])
 
 
@@ -327,13 +401,19 @@ def test_digits_of_other_scripts(text: str) -> None:
         ("moment", SI, r'"550 kN\*m"'),
         ("stress", US, '"4000 psi" or "60 ksi"'),
         ("stress", SI, '"28 MPa"'),
-        ("force", SI, "a number with its unit"),
+        ("force", US, '"12 kip"'),
+        ("force", SI, '"50 kN"'),
+        ("force per length", US, '"1.2 kip/ft" or "800 plf"'),
+        ("force per length", SI, '"18 kN/m"'),
+        ("weight per volume", US, '"150 pcf"'),
+        ("weight per volume", SI, r'"24 kN/m\^3"'),
     ],
 )
 def test_example_fits_kind_and_system(kind: str, system: UnitSystem, example: str) -> None:
     """The example is of the kind asked for, in the job's own system."""
+    key = {"weight per volume": "density"}.get(kind, kind.replace(" ", "_"))
     with pytest.raises(QuantityError, match=f"expected a {kind} such as {example}"):
-        parse_quantity("?", kind, system, system.trade[kind])
+        parse_quantity("?", key, system, system.trade[key])
 
 
 @pytest.mark.parametrize(
@@ -345,6 +425,10 @@ def test_example_fits_kind_and_system(kind: str, system: UnitSystem, example: st
         ("us", "stress", 4000.0, 4000.0),
         ("us", "area", 4.74, 4.74),
         ("us", "strain", 0.005, 0.005),
+        ("us", "force_per_length", 1200 / 12, 1.2),
+        ("us", "density", 150 / 1728, 150.0),
+        ("si", "force_per_length", 18.0, 18.0),
+        ("si", "density", 24e-6, 24.0),
         ("si", "moment", 550e6, 550.0),
         ("si", "force", 3000.0, 3.0),
         ("si", "length", 600.0, 600.0),
