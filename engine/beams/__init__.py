@@ -1,0 +1,1 @@
+"""Beams over supports: analysis, shear, deflection, cut-offs and bent shapes."""
