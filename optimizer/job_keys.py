@@ -20,13 +20,13 @@ MOST_KEPT = 200
 MOST_VARIANTS = 200
 
 
-def _quantity(
-    kind: str, us: tuple[float, float, str], si: tuple[float, float, str]
+def quantity(
+    kind: str, us: tuple[float, float, str], si: tuple[float, float, str], *, below: str = ""
 ) -> BeforeValidator:
     """Validator of a quantity.
 
     Each range is the least and greatest size and the unit of a plain number, in which the
-    range is written too.
+    range is written too. What a negative value means may be said by `below`.
     """
     table = {"us": us, "si": si}
 
@@ -37,7 +37,8 @@ def _quantity(
         least = parse_quantity(low, kind, system, unit)
         most = parse_quantity(high, kind, system, unit)
         if not least <= abs(size) <= most or (size < 0 and kind != "moment"):
-            msg = f"got {quoted(value)}; allowed: {plain(low)} to {plain(high)} {unit}"
+            got = f"{below}, got {quoted(value)}" if below and size < 0 else f"got {quoted(value)}"
+            msg = f"{got}; allowed: {plain(low)} to {plain(high)} {unit}"
             if kind == "moment":
                 msg += " in size, + sagging, - hogging"
             raise QuantityError(msg)
@@ -46,30 +47,30 @@ def _quantity(
     return BeforeValidator(read)
 
 
-def _length(us: tuple[float, float], si: tuple[float, float]) -> BeforeValidator:
+def length(us: tuple[float, float], si: tuple[float, float]) -> BeforeValidator:
     """Validator of a length of the section, plain numbers in in or mm."""
-    return _quantity("length", (*us, "in"), (*si, "mm"))
+    return quantity("length", (*us, "in"), (*si, "mm"))
 
 
-def _distance(us: tuple[float, float], si: tuple[float, float]) -> BeforeValidator:
+def distance(us: tuple[float, float], si: tuple[float, float]) -> BeforeValidator:
     """Validator of a length of the floor, plain numbers in ft or m."""
-    return _quantity("length", (*us, "ft"), (*si, "m"))
+    return quantity("length", (*us, "ft"), (*si, "m"))
 
 
-SectionSize = Annotated[float, _length((4, 600), (100, 15_000))]
-Thickness = Annotated[float, _length((1.5, 120), (40, 3000))]
-StirrupSpacing = Annotated[float, _length((1, 48), (25, 1200))]
-Cover = Annotated[float, _length((0.375, 12), (10, 300))]
-Gap = Annotated[float, _length((0, 24), (0, 600))]
-PreferredGap = Annotated[float, _length((0.1, 24), (2, 600))]
-LayerGap = Annotated[float, _length((1, 24), (25, 600))]
-Aggregate = Annotated[float, _length((0.25, 3), (6, 75))]
-Span = Annotated[float, _distance((2, 400), (0.6, 120))]
-ClearDistance = Annotated[float, _distance((0, 200), (0, 60))]
-Moment = Annotated[float, _quantity("moment", (0.01, 1e6, "kip*ft"), (0.01, 1.5e6, "kN*m"))]
-ConcreteStrength = Annotated[float, _quantity("stress", (500, 20e3, "psi"), (3, 140, "MPa"))]
-YieldStrength = Annotated[float, _quantity("stress", (20e3, 150e3, "psi"), (100, 1000, "MPa"))]
-Modulus = Annotated[float, _quantity("stress", (5e5, 12e6, "psi"), (4000, 80e3, "MPa"))]
+SectionSize = Annotated[float, length((4, 600), (100, 15_000))]
+Thickness = Annotated[float, length((1.5, 120), (40, 3000))]
+StirrupSpacing = Annotated[float, length((1, 48), (25, 1200))]
+Cover = Annotated[float, length((0.375, 12), (10, 300))]
+Gap = Annotated[float, length((0, 24), (0, 600))]
+PreferredGap = Annotated[float, length((0.1, 24), (2, 600))]
+LayerGap = Annotated[float, length((1, 24), (25, 600))]
+Aggregate = Annotated[float, length((0.25, 3), (6, 75))]
+Span = Annotated[float, distance((2, 400), (0.6, 120))]
+ClearDistance = Annotated[float, distance((0, 200), (0, 60))]
+Moment = Annotated[float, quantity("moment", (0.01, 1e6, "kip*ft"), (0.01, 1.5e6, "kN*m"))]
+ConcreteStrength = Annotated[float, quantity("stress", (500, 20e3, "psi"), (3, 140, "MPa"))]
+YieldStrength = Annotated[float, quantity("stress", (20e3, 150e3, "psi"), (100, 1000, "MPa"))]
+Modulus = Annotated[float, quantity("stress", (5e5, 12e6, "psi"), (4000, 80e3, "MPa"))]
 Constant = Annotated[float, Field(ge=0, le=1000, allow_inf_nan=False, strict=True)]
 Lightweight = Annotated[float, Field(ge=0.75, le=1.0, allow_inf_nan=False, strict=True)]
 Name = Annotated[str, Field(min_length=1, max_length=60, strict=True)]
@@ -77,11 +78,13 @@ Names = Annotated[list[Name], Field(max_length=12)]
 Layers = Annotated[list[Annotated[str, Field(strict=True, max_length=200)]], Field(min_length=1)]
 
 
-class _Keys(BaseModel):
+class Keys(BaseModel):
+    """A table of keys; any other key in it is an error."""
+
     model_config = ConfigDict(extra="forbid", frozen=True, populate_by_name=False)
 
 
-class MaterialKeys(_Keys):
+class MaterialKeys(Keys):
     """Keys of `[materials]`."""
 
     fc: ConcreteStrength | None = None
@@ -94,7 +97,7 @@ class MaterialKeys(_Keys):
     Ec: Modulus | None = None
 
 
-class BarKeys(_Keys):
+class BarKeys(Keys):
     """Keys of `[bars]`."""
 
     catalog: Annotated[str, Field(min_length=1, max_length=500, strict=True)] | None = None
@@ -107,7 +110,7 @@ class BarKeys(_Keys):
     tension_controlled: StrictBool | None = None
 
 
-class RankingKeys(_Keys):
+class RankingKeys(Keys):
     """Keys of `[ranking]`."""
 
     by: Literal["practical", "lightest"] | None = None
@@ -125,7 +128,7 @@ class RankingKeys(_Keys):
     )
 
 
-class OptionKeys(_Keys):
+class OptionKeys(Keys):
     """Keys of `[options]`: what may change against a drawn layout."""
 
     sizes: StrictBool | None = None
@@ -144,7 +147,7 @@ class JobOptionKeys(OptionKeys):
     palette: Annotated[int, Field(strict=True, ge=1, le=12)] | None = None
 
 
-class FlangeKeys(_Keys):
+class FlangeKeys(Keys):
     """A flange given by its size."""
 
     width: SectionSize
@@ -152,12 +155,17 @@ class FlangeKeys(_Keys):
     side: Literal["both", "left", "right"] = "both"
 
 
-class SlabKeys(_Keys):
-    """A slab from which the flange follows."""
+class SpanSlabKeys(Keys):
+    """A slab from which the flange follows, over a span known elsewhere."""
 
     thickness: Thickness
     clear_left: ClearDistance = 0.0
     clear_right: ClearDistance = 0.0
+
+
+class SlabKeys(SpanSlabKeys):
+    """A slab from which the flange follows."""
+
     span: Span
 
 
@@ -185,7 +193,7 @@ class SectionKeys(MaterialKeys, BarKeys, RankingKeys):
     length: Span | None = None
 
 
-class JobKeys(_Keys):
+class JobKeys(Keys):
     """Keys of the whole file."""
 
     title: Annotated[str, Field(max_length=200, strict=True)] = ""

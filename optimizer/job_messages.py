@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import difflib
 from collections.abc import Mapping
-from typing import Any
+from typing import Any, get_origin
 
 from pydantic import BaseModel, ValidationError
 from pydantic_core import ErrorDetails
@@ -53,13 +53,21 @@ def quoted(value: object) -> str:
 
 
 def first_error(
-    error: ValidationError, model: type[BaseModel], data: Mapping[str, Any], name: str
+    error: ValidationError,
+    model: type[BaseModel],
+    data: Mapping[str, Any],
+    name: str,
+    first_entry: int = 0,
 ) -> str:
-    """Turn the first fault of a file into one message."""
+    """Turn the first fault of a file into one message.
+
+    Entries of a list are counted from `first_entry`, tables such as ``[[section]]`` from 1.
+    """
     errors = error.errors(include_url=False)
     # A misspelt key is also a missing one: the misspelling explains it.
     first = min(errors, key=lambda item: item["type"] != "extra_forbidden")
-    where, key = _place(first, data)
+    tables = _tables(model)
+    where, key = _place(first, data, tables, first_entry)
     kind, given = first["type"], first["input"]
     if kind == "extra_forbidden":
         known = _known_keys(first, model)
@@ -67,24 +75,34 @@ def first_error(
         hint = f"hint: did you mean {near[0]}?" if near else f"allowed: {', '.join(known)}"
         text = f"unknown key; {hint}"
     elif kind == "missing":
-        text = "missing; needed here" if key != "section" else "missing; expected [[section]]"
+        text = f"missing; expected [[{key}]]" if key in tables else "missing; needed here"
     elif kind == "value_error":
         text = str(first["ctx"]["error"])
     else:
-        text = f"got {short(quoted(given))}; {_expected(first)}"
+        text = f"got {short(quoted(given))}; {_expected(first, tables)}"
     more = f" (and {len(errors) - 1} more)" if len(errors) > 1 else ""
     place = f"{name}: {where}, {key}" if where else f"{name}: {key}"
     return f"{place}: {text}{more}"
 
 
-def _expected(error: ErrorDetails) -> str:
+def _tables(model: type[BaseModel]) -> list[str]:
+    """Keys that stand for tables written one after the other, such as ``[[section]]``."""
+    return [name for name, field in model.model_fields.items() if _is_list(field.annotation)]
+
+
+def _is_list(annotation: Any) -> bool:
+    return get_origin(annotation) is list and _model_of(annotation) is not None
+
+
+def _expected(error: ErrorDetails, tables: list[str]) -> str:
     """What was expected, in the words of a job file."""
     kind = error["type"]
     if kind in ("model_type", "dict_type"):
         return "expected a table of keys"
     if kind == "list_type":
-        table = error["loc"] == ("section",)
-        return "expected [[section]] tables" if table else "expected a list in square brackets"
+        name, *inner = error["loc"]
+        table = name in tables and not inner
+        return f"expected [[{name}]] tables" if table else "expected a list in square brackets"
     if kind == "too_short":
         return "expected at least one entry"
     if kind == "finite_number":
@@ -93,20 +111,25 @@ def _expected(error: ErrorDetails) -> str:
     return words.replace("a valid string", "a text in quotes").replace("valid ", "")
 
 
-def _place(error: ErrorDetails, data: Mapping[str, Any]) -> tuple[str, str]:
-    """Section (with its mark) and dotted key of a fault."""
+def _place(
+    error: ErrorDetails, data: Mapping[str, Any], tables: list[str], first_entry: int
+) -> tuple[str, str]:
+    """Table of several (with its number and mark) and dotted key of a fault."""
     location = list(error["loc"])
-    where = ""
-    if len(location) >= 2 and location[0] == "section" and isinstance(location[1], int):
-        where = f"section {location[1] + 1}"
-        sections = data.get("section")
-        if isinstance(sections, list) and isinstance(sections[location[1]], dict):
-            mark = sections[location[1]].get("mark")
+    where, table = "", str(location[0])
+    if table in tables and len(location) >= 2 and isinstance(location[1], int):
+        where = f"{table} {location[1] + 1}"
+        entries = data.get(table)
+        if isinstance(entries, list) and isinstance(entries[location[1]], dict):
+            mark = entries[location[1]].get("mark")
             if isinstance(mark, str):
                 where += f' "{short(mark)}"'
         location = location[2:]
-    key = ".".join(short(str(part)) or '""' for part in location) or "section"
-    return where, key
+    parts = [
+        str(part + first_entry) if isinstance(part, int) else short(part) or '""'
+        for part in location
+    ]
+    return where, ".".join(parts) or table
 
 
 def _known_keys(error: ErrorDetails, model: Any) -> list[str]:

@@ -10,7 +10,7 @@ from optimizer.measures import Band
 from optimizer.options import Option, OptionsResult, SectionOptions
 from optimizer.palette import Palette
 from optimizer.views import View
-from optimizer.wording import invented_prices_of, trade_off_proof_of
+from optimizer.wording import price_notes_of, trade_off_proof_of
 
 
 def show_options(view: View, result: OptionsResult) -> None:
@@ -28,7 +28,7 @@ def show_options(view: View, result: OptionsResult) -> None:
         _section(view, section, currency)
     if result.palette is not None:
         _palette(view, result)
-    invented = invented_prices_of(result)
+    invented = price_notes_of(result)
     if invented:
         view.say(invented, "bold")
 

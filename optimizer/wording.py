@@ -118,8 +118,8 @@ def trade_off_proof_of(section: SectionOptions) -> str:
     return text
 
 
-def invented_prices_of(result: OptionsResult) -> str:
-    """Warn of prices that are for demonstration only.
+def price_notes_of(result: OptionsResult) -> str:
+    """Warn of prices that are for demonstration only, and of sizes that nothing has.
 
     Parameters
     ----------
@@ -129,9 +129,15 @@ def invented_prices_of(result: OptionsResult) -> str:
     Returns
     -------
     str
-        One sentence; empty if the prices are the user's own, or there are none.
+        Sentences; empty if there is nothing to warn of.
     """
-    prices = result.job.prices
-    if prices is None or not prices.invented:
-        return ""
-    return f"Prices of list {prices.name!r} are INVENTED, for demonstration only."
+    prices, unknown = result.job.prices, result.job.unknown_priced
+    notes = []
+    if prices is not None and prices.invented:
+        notes.append(f"Prices of list {prices.name!r} are INVENTED, for demonstration only.")
+    if prices is not None and unknown:
+        notes.append(
+            f"List {prices.name!r} has prices for {', '.join(unknown)}, which no bar catalogue of"
+            " the job has: a misspelt size gets the price for all sizes."
+        )
+    return " ".join(notes)

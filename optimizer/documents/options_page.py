@@ -22,7 +22,7 @@ from optimizer.documents.wording import Figures, visible
 from optimizer.measures import Measures
 from optimizer.options import Option, OptionsResult, SectionOptions
 from optimizer.results import RatedLayout
-from optimizer.wording import invented_prices_of, trade_off_proof_of
+from optimizer.wording import price_notes_of, trade_off_proof_of
 
 Pair = tuple[str, str]
 
@@ -109,7 +109,7 @@ def options_html(result: OptionsResult) -> str:
         sections=[_section(item, number, result) for number, item in enumerate(result.sections, 1)],
         without=visible(", ".join(without)),
         palette=palette_view(result),
-        invented=visible(invented_prices_of(result)),
+        invented=visible(price_notes_of(result)),
         money=unit_of("money", figures, currency) if currency else "",
         carbon=unit_of("carbon", figures, currency),
     )

@@ -16,7 +16,7 @@ from optimizer.measures import Measures
 from optimizer.options import Option, OptionsResult, SectionOptions
 from optimizer.results import RatedLayout
 from optimizer.scoring import TERMS
-from optimizer.wording import invented_prices_of, trade_off_proof_of
+from optimizer.wording import price_notes_of, trade_off_proof_of
 
 _MONEY = "0.00"
 
@@ -231,7 +231,7 @@ def _notes(result: OptionsResult) -> Table:
         ("code", None, result.job.edition.name),
     ]
     rows += [(subject, None, note) for subject, note in GENERAL_NOTES]
-    invented = invented_prices_of(result)
+    invented = price_notes_of(result)
     if invented:
         rows.append(("prices", None, invented))
     rows += [

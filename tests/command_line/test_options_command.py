@@ -213,6 +213,21 @@ def test_invented_prices_are_said_to_be(tmp_path: Path, capsys: pytest.CaptureFi
     assert "cost" not in bare
 
 
+def test_a_misspelt_size_of_a_price_list_is_told(
+    tmp_path: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    """Its bars get the price for all sizes: the reader hears of it; other sizes are no news."""
+    entries = '[[steel]]\nprice = 0.8\n[[steel]]\nsize = "{size}"\nprice = 0.9\n'
+    for size, told in (("#O8", True), ("#8", False)):
+        prices = PRICES.format(currency="USD", concrete=200).replace("steel = 0.8\n", "")
+        prices += entries.format(size=size)
+        (tmp_path / "own.toml").write_text(prices, encoding="utf-8")
+        path = job_file(tmp_path, f'{US}[options]\nprices = "own.toml"\n')
+        outcome = run_here(capsys, "options", str(path))
+        assert outcome.code == 0, outcome.err
+        assert ("#O8, which no bar catalogue" in _words(outcome.out)) == told
+
+
 def test_bands_and_order_are_told(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
     """Each chosen option has its range of cost and carbon, each section whether the order stays."""
     path = job_file(tmp_path, ALL_LEVERS)

@@ -16,7 +16,7 @@ from optimizer.documents.page_differences import difference_lines
 from optimizer.documents.plot import options_plot
 from optimizer.documents.wording import Figures
 from optimizer.options import Option, OptionsResult, options
-from optimizer.wording import CAUTION, NOT_CHECKED, invented_prices_of, trade_off_proof_of
+from optimizer.wording import CAUTION, NOT_CHECKED, price_notes_of, trade_off_proof_of
 from tests.documents.options_jobs import OPTIONS_SI, optioned
 from tests.documents.page_jobs import Reader, drawings, parts
 
@@ -198,7 +198,7 @@ def test_invented_prices_are_called_so() -> None:
     read = Reader(page_html(result))
     with_money = sum(bool(section.chosen) for section in result.sections)
     with_money += sum(len(section.chosen) for section in result.sections)
-    assert read.text.count(invented_prices_of(result)) == 1 + with_money
+    assert read.text.count(price_notes_of(result)) == 1 + with_money
     assert read.text.count("demo (INVENTED)") == len(result.sections)
     assert "INVENTED" not in Reader(page_html(optioned("si"))).text
     assert result.job.prices is not None
