@@ -11,7 +11,12 @@ from dataclasses import dataclass
 
 from catalogs import Bar
 from engine.confinement import confinement_of, is_top_bar, meets_short_form
-from engine.development import LEAST_CONFINEMENT, short_form_length, straight_length
+from engine.development import (
+    LEAST_CONFINEMENT,
+    MOST_CONFINEMENT,
+    short_form_length,
+    straight_length,
+)
 from engine.development_rules import development_rules
 from engine.hooks import hooked_length
 from engine.laps import short_form_lap_length
@@ -73,6 +78,29 @@ def development_in_layout(section: Section, placement: Placement, layer: int, ba
         section.concrete, section.steel, bar, confinement=held.ratio, top=top
     ).length
     return min(table, general)
+
+
+def shortest_development(section: Section, bar: Bar) -> float:
+    """Development length below which no layout brings a size.
+
+    Parameters
+    ----------
+    section : Section
+        Section with a moment of the face's sign.
+    bar : Bar
+        Size.
+
+    Returns
+    -------
+    float
+        The lesser of the general equation with all the confinement that counts and the better
+        row of the short form, both for a bar that is no top bar, 25.4.2. [in or mm]
+    """
+    general = straight_length(
+        section.concrete, section.steel, bar, confinement=MOST_CONFINEMENT, top=False
+    )
+    table = short_form_length(section.concrete, section.steel, bar, favourable=True, top=False)
+    return min(general.length, table.length)
 
 
 def largest_spacing_for_grade(section: Section, placement: Placement) -> float:

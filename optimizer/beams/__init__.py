@@ -1,0 +1,1 @@
+"""Whole beams: from spans and loads to bars with lengths, and again after a change."""
