@@ -1,0 +1,1 @@
+"""The search of a whole beam against trying every choice."""
