@@ -8,25 +8,49 @@ from __future__ import annotations
 
 import os
 import sys
-from collections.abc import Callable
+from collections.abc import Callable, Mapping
 from contextlib import suppress
 from dataclasses import replace
 from importlib.resources import files
 from pathlib import Path
-from typing import TYPE_CHECKING, Annotated, NoReturn
+from typing import TYPE_CHECKING, Annotated, Any, NoReturn
 
 import typer
 
 from catalogs import BUILTIN_CATALOGS, CatalogError, bar_catalog
 from engine import EngineError
 from optimizer._version import VERSION
+from optimizer.beams.starter import beam_starter
+from optimizer.cli_beam import beam_command
+from optimizer.cli_options import (
+    Brief,
+    CsvFile,
+    DxfFile,
+    HtmlFile,
+    JobFile,
+    JsonFile,
+    Only,
+    Plain,
+    SaveFile,
+    Show,
+    XlsxFile,
+)
+from optimizer.cli_respan import respan_command, show_demo_beam
 from optimizer.errors import DefectError, JobError, OptimizerError
 from optimizer.files import write_text
 from optimizer.job import Job, parse_job, read_job
-from optimizer.outputs import OutputFiles, ReaderGoneError, data_view, progress_line
+from optimizer.job_messages import short
+from optimizer.job_text import parse_toml, text_of
+from optimizer.outputs import (
+    OutputFiles,
+    ReaderGoneError,
+    SectionDocuments,
+    data_view,
+    progress_line,
+)
+from optimizer.record import table_names
 
 if TYPE_CHECKING:
-    from optimizer.json_output import Result
     from optimizer.views import View
 
 app = typer.Typer(
@@ -40,39 +64,6 @@ app = typer.Typer(
 )
 
 _STARTERS = {"us": "starter_us.toml", "si": "starter_si.toml"}
-
-JobFile = Annotated[Path, typer.Argument(metavar="JOB", help="Job file (TOML).")]
-JsonFile = Annotated[
-    str | None,
-    typer.Option(
-        "--json",
-        metavar="FILE",
-        help="Also write the result as JSON; - prints it and nothing else.",
-    ),
-]
-HtmlFile = Annotated[
-    Path | None,
-    typer.Option("--html", metavar="FILE", help="Also write one page to read and print."),
-]
-XlsxFile = Annotated[
-    Path | None, typer.Option("--xlsx", metavar="FILE", help="Also write a workbook.")
-]
-DxfFile = Annotated[
-    Path | None, typer.Option("--dxf", metavar="FILE", help="Also draw the sections to scale.")
-]
-CsvFile = Annotated[
-    Path | None, typer.Option("--csv", metavar="FILE", help="Also write the list as a table.")
-]
-Plain = Annotated[bool, typer.Option("--plain", help="Draw with ASCII characters only.")]
-Only = Annotated[
-    list[str] | None,
-    typer.Option("--only", metavar="MARK", help="Only the section of this mark; may be repeated."),
-]
-Show = Annotated[
-    int | None,
-    typer.Option("--show", metavar="N", min=1, help="Full check of line N instead of line 1."),
-]
-Brief = Annotated[bool, typer.Option("--brief", help="Short lists only, without checks.")]
 
 
 def _print_version(value: bool) -> None:
@@ -120,27 +111,47 @@ def rank_command(
     show: Show = None,
     brief: Brief = False,
     only: Only = None,
+    save: SaveFile = None,
     plain: Plain = False,
 ) -> None:
     """Ranked short list of bar layouts for every section of a job."""
-    files = OutputFiles(json=json_file, html=html, xlsx=xlsx, dxf=dxf, csv=csv)
+    files = OutputFiles(json=json_file, html=html, xlsx=xlsx, dxf=dxf, csv=csv, record=save)
     files.check(job_file)
-    _rank(_selected(read_job(job_file), only), files, show, brief, plain)
+    text, base, name = text_of(job_file), job_file.parent, short(job_file.name)
+    job = _selected(parse_job(text, name=name, base=base), only)
+    keys = parse_toml(text, name)
+    if save is not None:
+        files.check(job_file, *(base / table for table in table_names(keys)))
+    marks = [problem.section.mark for problem in job.problems]
+    keys["section"] = [section for section in keys["section"] if section["mark"] in marks]
+    _rank(job, files, show, brief, plain, keys, base)
 
 
 def _deliver(
-    job: Job, result: Result, files: OutputFiles, plain: bool, show: Callable[[View], None]
+    job: Job,
+    documents: SectionDocuments,
+    files: OutputFiles,
+    plain: bool,
+    show: Callable[[View], None],
 ) -> NoReturn:
     """Write the files, print the report unless JSON takes its place, end with the exit code."""
-    if not files.write(result):
+    if not files.write(documents):
         view = data_view(plain=plain)
         view.title(job.title, job.edition.name)
         show(view)
         view.footer()
-    raise typer.Exit(0 if result.ok else 1)
+    raise typer.Exit(0 if documents.result.ok else 1)
 
 
-def _rank(job: Job, files: OutputFiles, show: int | None, brief: bool, plain: bool) -> NoReturn:
+def _rank(
+    job: Job,
+    files: OutputFiles,
+    show: int | None,
+    brief: bool,
+    plain: bool,
+    keys: Mapping[str, Any] | None = None,
+    base: Path | None = None,
+) -> NoReturn:
     from optimizer.results import rank
 
     with progress_line() as tell:
@@ -150,7 +161,7 @@ def _rank(job: Job, files: OutputFiles, show: int | None, brief: bool, plain: bo
         for section in result.sections:
             view.ranked(section, show=show, brief=brief)
 
-    _deliver(job, result, files, plain, report)
+    _deliver(job, SectionDocuments(result, keys, base), files, plain, report)
 
 
 @app.command("check")
@@ -180,7 +191,7 @@ def check_command(
         if skipped:
             view.say(f"{skipped} of {count} sections give no layers and were not checked.")
 
-    _deliver(job, result, files, plain, report)
+    _deliver(job, SectionDocuments(result), files, plain, report)
 
 
 @app.command("options")
@@ -206,7 +217,11 @@ def _options(job: Job, files: OutputFiles, plain: bool) -> NoReturn:
 
     with progress_line() as tell:
         result = options(job, tell)
-    _deliver(job, result, files, plain, lambda view: show_options(view, result))
+    _deliver(job, SectionDocuments(result), files, plain, lambda view: show_options(view, result))
+
+
+app.command("beam")(beam_command)
+app.command("respan")(respan_command)
 
 
 def _packaged(name: str) -> str:
@@ -230,7 +245,7 @@ def demo_command(
         ),
     ] = None,
 ) -> None:
-    """Run the built-in, invented scenario: ranking, then options for a drawn layout."""
+    """Run the built-in, invented scenario: ranking, options, and a beam whose span grows."""
     text = _packaged("demo.toml")
     if job_file is not None:
         write_text(job_file, text, replace=False)
@@ -247,19 +262,22 @@ def demo_command(
     if json_file != "-":
         with suppress(typer.Exit):
             _options(job, page, plain)
+        show_demo_beam(_packaged("demo_beam.toml"), "Q-P", "24 ft", brief=brief, plain=plain)
 
 
 @app.command("new")
 def new_command(
     path: Annotated[Path, typer.Argument(metavar="FILE", help="File to write.")],
     units: Annotated[str, typer.Option("--units", help="us or si.")] = "us",
+    beam: Annotated[bool, typer.Option("--beam", help="A job of a whole beam.")] = False,
 ) -> None:
     """Write a commented starter job."""
     if units not in _STARTERS:
         msg = f"--units: got {units!r}; allowed: {', '.join(_STARTERS)}"
         raise JobError(msg)
-    write_text(path, _packaged(_STARTERS[units]), replace=False)
-    typer.echo(f"{path} written; run: cagewright rank {path}")
+    text = beam_starter(units) if beam else _packaged(_STARTERS[units])
+    write_text(path, text, replace=False)
+    typer.echo(f"{path} written; run: cagewright {'beam' if beam else 'rank'} {path}")
 
 
 @app.command("bars")

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 import os
 import tempfile
+from collections.abc import Sequence
+from contextlib import suppress
 from pathlib import Path
 
 from optimizer.errors import OutputError
@@ -104,22 +106,70 @@ def write_bytes(path: Path, data: bytes, *, replace: bool = True) -> None:
     OutputError
         If the file exists and must not be replaced, or cannot be written.
     """
-    target = check_target(path, replace=replace)
+    write_together([(path, data)], replace=replace)
+
+
+def write_together(contents: Sequence[tuple[Path, bytes]], *, replace: bool = True) -> None:
+    """Write several files, or none of them: a fault puts back what was there before.
+
+    Parameters
+    ----------
+    contents : sequence of (Path, bytes)
+        Files with their contents.
+    replace : bool
+        Whether existing files may be replaced.
+
+    Raises
+    ------
+    OutputError
+        If a file exists and must not be replaced, or cannot be written.
+    """
+    targets = [check_target(path, replace=replace) for path, _ in contents]
+    staged: list[tuple[Path, Path, bytes | None]] = []
+    moved = 0
     try:
-        mode = target.stat().st_mode & 0o777 if target.exists() else 0o666 & ~_umask()
-        handle, name = tempfile.mkstemp(dir=target.parent, prefix=".cagewright-")
-        temporary = Path(name)
-        try:
-            with os.fdopen(handle, "wb") as file:
-                file.write(data)
-            temporary.chmod(mode)
+        for target, (_, data) in zip(targets, contents, strict=True):
+            before = target.read_bytes() if len(contents) > 1 and target.exists() else None
+            staged.append((target, _beside(target, data), before))
+        for target, temporary, _ in staged:
             temporary.replace(target)
-        except BaseException:
+            moved += 1
+    except BaseException as error:
+        # Each loop has stopped at the file that it could not deal with.
+        at = moved if len(staged) == len(contents) else len(staged)
+        for target, temporary, before in staged:
             temporary.unlink(missing_ok=True)
+            if moved > 0 and len(staged) > 1:
+                moved -= 1
+                _put_back(target, before)
+        if not isinstance(error, OSError | ValueError):
             raise
-    except (OSError, ValueError) as error:
-        msg = f"{short(str(path))}: cannot be written: {_reason(error)}"
+        msg = f"{short(str(contents[at][0]))}: cannot be written: {_reason(error)}"
         raise OutputError(msg) from None
+
+
+def _beside(target: Path, data: bytes) -> Path:
+    """Write a temporary file next to the one that it is to become."""
+    mode = target.stat().st_mode & 0o777 if target.exists() else 0o666 & ~_umask()
+    handle, name = tempfile.mkstemp(dir=target.parent, prefix=".cagewright-")
+    temporary = Path(name)
+    try:
+        with os.fdopen(handle, "wb") as file:
+            file.write(data)
+        temporary.chmod(mode)
+    except BaseException:
+        temporary.unlink(missing_ok=True)
+        raise
+    return temporary
+
+
+def _put_back(target: Path, before: bytes | None) -> None:
+    """Undo a replacement as far as the disk lets us; the first fault is what is reported."""
+    with suppress(OSError):
+        if before is None:
+            target.unlink(missing_ok=True)
+        else:
+            target.write_bytes(before)
 
 
 def _reason(error: Exception) -> str:

@@ -4,17 +4,17 @@ from __future__ import annotations
 
 import io
 import sys
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator, Mapping
 from contextlib import contextmanager
 from dataclasses import dataclass
 from pathlib import Path
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any, Protocol
 
 from rich.console import Console
 from rich.text import Text
 
-from optimizer.errors import OutputError
-from optimizer.files import check_target, write_bytes, write_text
+from optimizer.errors import DefectError, OutputError
+from optimizer.files import check_target, write_together
 from optimizer.results import Progress
 
 if TYPE_CHECKING:
@@ -54,15 +54,44 @@ def _in_unicode() -> bool:
 
 
 @contextmanager
-def progress_line() -> Iterator[Progress]:
-    """A line on standard error while a job of many sections runs in a terminal."""
+def status_line() -> Iterator[Callable[[str], None]]:
+    """A line on standard error that says what is being done, in a terminal."""
     talk = Console(stderr=True, highlight=False)
     with talk.status("") as status:
+        yield lambda text: status.update(Text(text))
+
+
+@contextmanager
+def progress_line() -> Iterator[Progress]:
+    """A line on standard error while a job of many sections runs in a terminal."""
+    with status_line() as say:
 
         def tell(done: int, of: int, mark: str) -> None:
-            status.update(Text(f"section {done + 1} of {of}: {mark}"))
+            say(f"section {done + 1} of {of}: {mark}")
 
         yield tell
+
+
+class Documents(Protocol):
+    """What a result can be written as."""
+
+    def html(self) -> str:
+        """Page to read and print."""
+
+    def xlsx(self) -> bytes:
+        """Workbook."""
+
+    def dxf(self) -> str:
+        """Drawing to scale."""
+
+    def csv(self) -> str:
+        """List as a table."""
+
+    def json(self, *, ascii_only: bool) -> str:
+        """Everything as data."""
+
+    def record(self) -> bytes:
+        """What a later run starts from."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -74,13 +103,19 @@ class OutputFiles:
     xlsx: Path | None = None
     dxf: Path | None = None
     csv: Path | None = None
+    record: Path | None = None
 
-    def check(self, job_file: Path | None = None) -> None:
-        """Refuse an impossible place before the work, not after it."""
-        sources = () if job_file is None else (job_file,)
+    def check(self, *sources: Path) -> None:
+        """Refuse an impossible place before the work, not after it.
+
+        Parameters
+        ----------
+        *sources : Path
+            Files that the result is made from.
+        """
         json = None if self.json in (None, "-") else Path(str(self.json))
         taken: set[Path] = set()
-        for path in (json, self.html, self.xlsx, self.dxf, self.csv):
+        for path in (json, self.html, self.xlsx, self.dxf, self.csv, self.record):
             if path is None:
                 continue
             target = check_target(path, sources=sources)
@@ -89,47 +124,112 @@ class OutputFiles:
                 raise OutputError(msg)
             taken.add(target)
 
-    def write(self, result: Result) -> bool:
-        """Write all files; True if nothing else is to be printed."""
-        # Each document brings its own heavy packages: only what is asked for is loaded.
+    def write(self, documents: Documents) -> bool:
+        """Write all files or none; True if nothing else is to be printed.
+
+        Parameters
+        ----------
+        documents : Documents
+            Contents, made as far as they are asked for.
+        """
+        contents: list[tuple[Path, bytes]] = []
         if self.html is not None:
-            from optimizer.documents.page import page_html
-
-            write_text(self.html, page_html(result))
+            contents.append((self.html, _encoded(self.html, documents.html())))
         if self.xlsx is not None:
-            from optimizer.documents.workbook import workbook_bytes
-
-            write_bytes(self.xlsx, workbook_bytes(result))
+            contents.append((self.xlsx, documents.xlsx()))
         if self.dxf is not None:
-            from optimizer.documents.section_drawing import drawing_dxf
-
-            write_text(self.dxf, drawing_dxf(result))
+            contents.append((self.dxf, _encoded(self.dxf, documents.dxf())))
         if self.csv is not None:
-            write_text(self.csv, _csv(result))
-        return self.json is not None and _put_json(result, self.json)
+            contents.append((self.csv, _encoded(self.csv, documents.csv())))
+        if self.record is not None:
+            contents.append((self.record, documents.record()))
+        if self.json is not None and self.json != "-":
+            path = Path(self.json)
+            contents.append((path, _encoded(path, documents.json(ascii_only=False))))
+        write_together(contents)
+        return self.json == "-" and _print_json(documents)
 
 
-def _csv(result: Result) -> str:
-    from optimizer.options import OptionsResult
+@dataclass(frozen=True, slots=True)
+class SectionDocuments:
+    """Documents of a job of sections.
 
-    if isinstance(result, OptionsResult):
-        from optimizer.documents.options_tables import trade_off_csv
+    Attributes
+    ----------
+    result : RankResult, CheckResult or OptionsResult
+        What they tell.
+    keys : mapping or None
+        Keys of the job, for a record of a ranking.
+    base : Path or None
+        Folder that relative paths of the job start from.
+    """
 
-        return trade_off_csv(result)
-    from optimizer.documents.short_list_table import short_list_csv
+    result: Result
+    keys: Mapping[str, Any] | None = None
+    base: Path | None = None
 
-    return short_list_csv(result)
+    # Each document brings its own heavy packages: only what is asked for is loaded.
+
+    def html(self) -> str:
+        """Page to read and print."""
+        from optimizer.documents.page import page_html
+
+        return page_html(self.result)
+
+    def xlsx(self) -> bytes:
+        """Workbook."""
+        from optimizer.documents.workbook import workbook_bytes
+
+        return workbook_bytes(self.result)
+
+    def dxf(self) -> str:
+        """Drawing to scale."""
+        from optimizer.documents.section_drawing import drawing_dxf
+
+        return drawing_dxf(self.result)
+
+    def csv(self) -> str:
+        """List as a table."""
+        from optimizer.options import OptionsResult
+
+        if isinstance(self.result, OptionsResult):
+            from optimizer.documents.options_tables import trade_off_csv
+
+            return trade_off_csv(self.result)
+        from optimizer.documents.short_list_table import short_list_csv
+
+        return short_list_csv(self.result)
+
+    def json(self, *, ascii_only: bool) -> str:
+        """Everything as data."""
+        from optimizer.json_output import to_json
+
+        return to_json(self.result, ascii_only=ascii_only)
+
+    def record(self) -> bytes:
+        """Record of the first line of each section, that a change starts from."""
+        from optimizer.record import record_text
+        from optimizer.respan_sections import drawn_sections
+        from optimizer.results import RankResult
+
+        if self.keys is None or not isinstance(self.result, RankResult):
+            msg = "a record was asked for without a ranking of a job's keys"
+            raise DefectError(msg)
+        design = drawn_sections(self.result)
+        return record_text("sections", self.keys, self.base, design).encode("utf-8")
 
 
-def _put_json(result: Result, target: str) -> bool:
-    """Write JSON; True if nothing else is to be printed."""
-    from optimizer.json_output import to_json
-
-    if target != "-":
-        write_text(Path(target), to_json(result))
-        return False
+def _encoded(path: Path, text: str) -> bytes:
     try:
-        sys.stdout.write(to_json(result, ascii_only=not _in_unicode()))
+        return text.encode("utf-8")
+    except UnicodeEncodeError as error:
+        msg = f"{path}: cannot be written: {error}"
+        raise OutputError(msg) from None
+
+
+def _print_json(documents: Documents) -> bool:
+    try:
+        sys.stdout.write(documents.json(ascii_only=not _in_unicode()))
         sys.stdout.flush()
     except BrokenPipeError:
         raise ReaderGoneError from None

@@ -22,7 +22,7 @@ from optimizer.results import CheckedSection, RankedSection, RatedLayout
 from optimizer.scoring import TERMS
 from optimizer.wording import CAUTION, NOT_CHECKED, exemption_of, proof_of
 
-_VERDICTS = {
+VERDICTS = {
     State.OK: ("ok", ""),
     State.FAILS: ("FAILS", "bold red"),
     State.PROVIDE: ("provide", "bold"),
@@ -55,16 +55,20 @@ class View:
         self.say(f"{title}  ({code})" if title else code, "bold")
         self.say()
 
-    def footer(self) -> None:
+    def footer(self, not_checked: str = NOT_CHECKED) -> None:
         """Print what is not checked, and the caution."""
-        self.say(NOT_CHECKED)
+        self.say(not_checked)
         self.say(CAUTION)
+
+    def head_line(self, mark: str) -> None:
+        """Print the line that a section or beam starts with."""
+        width = min(self.console.width, 80)
+        name = f" {mark} "
+        self.say(f"{self.rule * 2}{name}{self.rule * max(0, width - cell_len(name) - 2)}", "bold")
 
     def heading(self, section: Section) -> None:
         """Print what a section is and what is asked of it."""
-        width = min(self.console.width, 80)
-        name = f" {section.mark} "
-        self.say(f"{self.rule * 2}{name}{self.rule * max(0, width - cell_len(name) - 2)}", "bold")
+        self.head_line(section.mark)
         system = section.edition.system
         steel = section.steel.name or "steel"
         unit = system.trade["stress"]
@@ -178,13 +182,13 @@ class View:
 
     def _row(self, row: Check, system: UnitSystem) -> None:
         """Print one check: its figures on a line, its note below."""
-        word, style = _VERDICTS[row.state]
+        word, style = VERDICTS[row.state]
         start = f"{row.id:<18} {row.clause:<10} "
         if row.state is State.NOT_APPLICABLE:
             self.say(f"{start}does not apply: {row.note}", style)
             return
-        demand = _sized(row.demand, row.quantity, system)
-        limit = _sized(row.limit, row.quantity, system)
+        demand = sized(row.demand, row.quantity, system)
+        limit = sized(row.limit, row.quantity, system)
         use = "" if row.ratio is None else f"{100 * row.ratio:.0f}%"
         self.say(f"{start}{demand:>14} {limit:>14} {use:>5}  {word}", style)
         for line in textwrap.wrap(row.note, min(self.console.width, 80) - 19):
@@ -278,7 +282,8 @@ def _fixed(value: float, width: int) -> str:
     return f"{value:.0f}"
 
 
-def _sized(value: float | None, quantity: str, system: UnitSystem) -> str:
+def sized(value: float | None, quantity: str, system: UnitSystem) -> str:
+    """Write a value of a check in the trade's unit of its kind; empty for none."""
     if value is None:
         return ""
     size = system.to_trade(quantity, value)
