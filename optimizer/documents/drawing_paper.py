@@ -80,6 +80,8 @@ class Paper:
     ----------
     system : UnitSystem
         Decides the unit.
+    height : float, optional
+        Height of ordinary text; that of cross-sections if not given. [in or mm]
 
     Attributes
     ----------
@@ -87,8 +89,8 @@ class Paper:
         Height of ordinary text. [in or mm]
     """
 
-    def __init__(self, system: UnitSystem) -> None:
-        self.height = _TEXT_HEIGHT[system.name]
+    def __init__(self, system: UnitSystem, height: float | None = None) -> None:
+        self.height = _TEXT_HEIGHT[system.name] if height is None else height
         self._name = system.name
         with _undated():
             self.document = self._empty()
@@ -127,6 +129,11 @@ class Paper:
         moved = [(at[0] + x, at[1] + y, bulge) for x, y, bulge in bends]
         self._space.add_lwpolyline(moved, format="xyb", close=True, dxfattribs={"layer": layer})
 
+    def path(self, points: Sequence[Point], layer: str, at: Point) -> None:
+        """Draw an open line of straight parts."""
+        moved = [(at[0] + x, at[1] + y) for x, y in points]
+        self._space.add_lwpolyline(moved, dxfattribs={"layer": layer})
+
     def circle(self, centre: Point, radius: float, layer: str, at: Point) -> None:
         """Draw a circle."""
         middle = (at[0] + centre[0], at[1] + centre[1])
@@ -152,9 +159,19 @@ class Paper:
         written.set_location((at[0] + place[0], at[1] + place[1]), attachment_point=corner)
 
     def dimension(
-        self, first: Point, second: Point, line: float, at: Point, *, upright: bool = False
+        self,
+        first: Point,
+        second: Point,
+        line: float,
+        at: Point,
+        *,
+        upright: bool = False,
+        text: str = "<>",
     ) -> None:
-        """Dimension the level or upright distance of two points, on a line at y or x."""
+        """Dimension the level or upright distance of two points, on a line at y or x.
+
+        A text takes the place of the measured length; ``<>`` in it stands for that length.
+        """
         base = (line, first[1]) if upright else (first[0], line)
         (bx, by), (x1, y1), (x2, y2) = ((at[0] + x, at[1] + y) for x, y in (base, first, second))
         drawn = self._space.add_linear_dim(
@@ -162,6 +179,7 @@ class Paper:
             p1=(x1, y1),
             p2=(x2, y2),
             angle=90.0 if upright else 0.0,
+            text=text,
             dimstyle=_STYLE,
             dxfattribs={"layer": DIMENSIONS},
         )

@@ -92,7 +92,7 @@ def _draw(root: ET.Element, checked: CheckedLayout, sheet: Sheet, *, block: bool
     ink.polygon(shapes, "concrete", corners(sheet))
     if block:
         _block(shapes, checked, sheet)
-    _breaks(shapes, sheet)
+    broken_edges(shapes, sheet)
     stirrup = section.stirrup.diameter
     inset = section.cover + stirrup / 2
     ink.box(
@@ -152,8 +152,16 @@ def _block(shapes: ET.Element, checked: CheckedLayout, sheet: Sheet) -> None:
         ink.line(shapes, "axis", (sheet.web_left - 8.0, row), (sheet.web_right + 8.0, row))
 
 
-def _breaks(shapes: ET.Element, sheet: Sheet) -> None:
-    """The broken edge of a flange that goes on."""
+def broken_edges(shapes: ET.Element, sheet: Sheet) -> None:
+    """Draw the broken edge of a flange that goes on.
+
+    Parameters
+    ----------
+    shapes : Element
+        Group of what is to scale.
+    sheet : Sheet
+        Where the section lies on the drawing.
+    """
     for name, flange in flanges(sheet.section):
         rows = (
             (sheet.top, sheet.y(flange.thickness))
