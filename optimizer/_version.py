@@ -1,3 +1,3 @@
 """Version of the program, the only place it is written."""
 
-VERSION = "0.1.0"
+VERSION = "0.2.0"

@@ -15,6 +15,7 @@ from optimizer.options import options
 from optimizer.palette import choose_palette
 from optimizer.results import rank_section
 from tests.benchmarks.alternatives import Outcome, enumerate_everything, evolve
+from tests.benchmarks.beams import beam_benchmarks
 from tests.benchmarks.sections import Case, benchmark_set
 
 _RUNS = 5
@@ -136,6 +137,12 @@ def main() -> None:
     )
     print(f"options of a section, all levers, 54 variants: {options_seconds(levers):.2f} s")
     print(f"sizes for a job of 40 sections: {palette_seconds(40):.2f} s")
+    for item in beam_benchmarks():
+        proved = "proved" if item.proved else "NOT proved"
+        print(
+            f"{item.what}: {item.seconds:.1f} s, index {item.cost:.1f}, gap {item.gap:.1e},"
+            f" {proved}"
+        )
     print("best practical score: this tool, every layout enumerated, differential evolution")
     for case in cases:
         wide = case.problem.section.outline.web > _WIDEST_COMPARED

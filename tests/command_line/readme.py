@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+import shlex
 import subprocess
 import sys
 from pathlib import Path
@@ -17,6 +18,11 @@ def code_blocks(language: str) -> list[str]:
     return re.findall(rf"```{language}\n(.*?)```", README.read_text(encoding="utf-8"), re.DOTALL)
 
 
+def beam_job() -> str:
+    """Job of a whole beam that the README shows."""
+    return next(block for block in code_blocks("toml") if "[beam]" in block)
+
+
 def shown_outputs() -> list[tuple[str, str]]:
     """Calls whose output the README shows, and what it shows."""
     text = README.read_text(encoding="utf-8")
@@ -24,10 +30,17 @@ def shown_outputs() -> list[tuple[str, str]]:
 
 
 def run_call(call: str, folder: Path) -> subprocess.CompletedProcess[str]:
-    """Run one of the program's calls in a folder that holds the README's job."""
+    """Run one of the program's calls in a folder that holds the README's jobs."""
     (folder / "pump.toml").write_text(code_blocks("toml")[0], encoding="utf-8")
+    (folder / "p7.toml").write_text(beam_job(), encoding="utf-8")
+    if "p7.json" in call and not (folder / "p7.json").exists():
+        _run(["beam", "p7.toml", "--save", "p7.json"], folder).check_returncode()
+    return _run(shlex.split(call), folder)
+
+
+def _run(arguments: list[str], folder: Path) -> subprocess.CompletedProcess[str]:
     return subprocess.run(
-        [sys.executable, "-m", "optimizer", *call.split()],
+        [sys.executable, "-m", "optimizer", *arguments],
         cwd=folder,
         env={"PYTHONPATH": str(ROOT), "PATH": "/usr/bin:/bin", "PYTHONIOENCODING": "utf-8"},
         capture_output=True,

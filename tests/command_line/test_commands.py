@@ -24,7 +24,7 @@ TWO = SMALL_JOB + SMALL_JOB[SMALL_JOB.index("[[section]]") :].replace("B1", "B2"
 # Mu of 150 kip*ft asks for about 1.65 in^2: three #8 have 2.37, two #7 have 1.20.
 GOOD_LAYERS = SMALL_JOB + 'layers = ["3 #8"]\n'
 WEAK_LAYERS = SMALL_JOB + 'layers = ["2 #7"]\n'
-COMMANDS = ("rank", "check", "options", "demo", "new", "bars")
+COMMANDS = ("rank", "check", "options", "beam", "respan", "demo", "new", "bars")
 
 
 def _lines(outcome: Outcome) -> list[str]:
@@ -50,11 +50,14 @@ def test_help_lists_commands(capsys: pytest.CaptureFixture[str]) -> None:
 @pytest.mark.parametrize(
     ("command", "options"),
     [
-        ("rank", ["--json", "--show", "--brief", "--only", "--plain"]),
+        ("rank", ["--json", "--show", "--brief", "--only", "--save", "--plain"]),
         ("check", ["--json", "--only", "--plain"]),
         ("options", ["--json", "--html", "--xlsx", "--dxf", "--csv", "--only", "--plain"]),
+        ("beam", ["--json", "--html", "--xlsx", "--dxf", "--csv", "--save", "--brief", "--plain"]),
+        ("respan", ["--span", "--support", "--load", "--fc", "--set", "--job", "--lock"]),
+        ("respan", ["--design", "--save", "--json", "--html", "--csv", "--brief", "--plain"]),
         ("demo", ["--json", "--show", "--brief", "--plain", "--job", "--folder"]),
-        ("new", ["--units"]),
+        ("new", ["--units", "--beam"]),
         ("bars", ["--catalog", "--plain"]),
     ],
 )
@@ -271,6 +274,9 @@ def test_demo_needs_no_input(
     assert (outcome.code, outcome.err) == (0, "")
     assert "invented" in outcome.out
     assert "No layout meets every rule." in outcome.out
+    grown = outcome.out[outcome.out.index("Then the span Q-P grows to 24 ft.") :]
+    for text in ("Least change", "Best from scratch", "To mark up", "passes every check"):
+        assert text in grown
     assert list(tmp_path.iterdir()) == []
 
 

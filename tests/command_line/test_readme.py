@@ -10,6 +10,7 @@ from pathlib import Path
 import pytest
 
 from catalogs import BUILTIN_CATALOGS
+from optimizer.beams.keys import BeamKeys, ColumnKeys, LoadKeys, SpanKeys, SupportKeys
 from optimizer.cli import run
 from optimizer.job_keys import JobKeys, SectionKeys
 from tests.command_line.readme import README, ROOT, code_blocks, output_of, run_call, shown_outputs
@@ -28,7 +29,8 @@ def test_commands_in_the_text(tmp_path: Path) -> None:
     calls = set(re.findall(r"`cagewright ([^`]+)`", text))
     assert len(calls) >= 6
     for call in sorted(calls):
-        words = call.replace("JOB", "pump.toml").replace("FILE", "new.toml")
+        job = "p7.toml" if call.startswith("beam") else "pump.toml"
+        words = call.replace("JOB", job).replace("FILE", "new.toml").replace("RECORD", "p7.json")
         target = tmp_path / str(len(words))
         target.mkdir(exist_ok=True)
         if "rank beams.toml" in words:
@@ -44,7 +46,7 @@ def test_options_exist(capsys: pytest.CaptureFixture[str]) -> None:
     """Options named in the README are options of the program."""
     named = set(re.findall(r"`(--[a-z]+)", README.read_text(encoding="utf-8")))
     known = set()
-    for command in ("rank", "check", "options", "demo", "new", "bars"):
+    for command in ("rank", "check", "options", "beam", "respan", "demo", "new", "bars"):
         assert run([command, "--help"]) == 0
         known |= set(re.findall(r"--[a-z]+", capsys.readouterr().out))
     assert named
@@ -78,6 +80,11 @@ def test_every_key_is_documented() -> None:
     """The table of keys names every key of a job, and every built-in catalogue is named."""
     text = README.read_text(encoding="utf-8")
     fields = SectionKeys.model_fields | JobKeys.model_fields
+    of_beam = (BeamKeys, ColumnKeys, SupportKeys, LoadKeys, SpanKeys)
+    for keys in of_beam:
+        for name, field in keys.model_fields.items():
+            shown = field.alias or name
+            assert re.search(rf"`{shown}`|{{[^`]*\b{shown}\b", text), (keys.__name__, name)
     for name, field in fields.items():
         assert f"`{field.alias or name}`" in text or f"[{name}]" in text, name
     for name in BUILTIN_CATALOGS:
