@@ -104,7 +104,7 @@ def test_every_stirrup_is_drawn(name: str) -> None:
         start, end = (beam.origins[index] + place for place in beam.clear_range(index))
         own = [x for x in xs if start < x < end]
         assert own[0] - start == pytest.approx(plan.first)
-        assert end - own[-1] == pytest.approx(plan.first)
+        assert end - own[-1] == pytest.approx(plan.last)
         gaps = [right - left for left, right in pairwise(own)]
         assert max(gaps) <= max(plan.spacings) + CLOSE
 
