@@ -15,9 +15,10 @@ from itertools import pairwise
 
 from ortools.sat.python import cp_model
 
+from optimizer.beams.marks import Hung, Key, MarkRule
 from optimizer.beams.modes import ModeBars
 from optimizer.beams.pools import PlanPool
-from optimizer.beams.variants import TopMode, Variant
+from optimizer.beams.variants import TopKind, TopMode, Variant
 
 SCALE = 10_000
 """Whole units of the model in one unit of cost. [-]"""
@@ -43,6 +44,8 @@ class Menu:
         Most sizes of longitudinal bars.
     constant : float
         Cost of all bars that no choice depends on. [lb or kg]
+    marks : MarkRule or None
+        Marks of all that is offered, where their number is limited.
     """
 
     places: tuple[tuple[Variant, ...], ...]
@@ -52,6 +55,7 @@ class Menu:
     pairs: tuple[tuple[int, int, tuple[tuple[int, int], ...]], ...]
     most_sizes: int | None
     constant: float
+    marks: MarkRule | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -144,6 +148,8 @@ class _Model:
         self._add_needs()
         self._add_sizes()
         self._add_laps()
+        if menu.marks is not None:
+            self._add_marks(menu.marks)
         for one, other, clashes in menu.pairs:
             for first, second in clashes:
                 self.model.add_at_most_one(self.places[one][first], self.places[other][second])
@@ -194,6 +200,47 @@ class _Model:
         for item, variable in zip(self.menu.modes, self.modes, strict=True):
             self.model.add_implication(variable, size(item.mode.bar.designation))
         self.model.add(sum(used.values()) <= self.menu.most_sizes)
+
+    def _add_marks(self, rule: MarkRule) -> None:
+        """Count marks: those of what is chosen, and the different lengths of hangers."""
+        used: dict[Key, cp_model.IntVar] = {}
+        offered = zip((*self.places, self.modes), (*rule.places, rule.modes), strict=True)
+        for variables, keys in offered:
+            with_key: defaultdict[Key, list[cp_model.IntVar]] = defaultdict(list)
+            for variable, own in zip(variables, keys, strict=True):
+                for key in own:
+                    if key not in rule.always:
+                        with_key[key].append(variable)
+            for key, same in with_key.items():
+                if key not in used:
+                    used[key] = self.model.new_bool_var(f"mark {len(used)}")
+                self.model.add(sum(same) <= used[key])
+        total = sum(used.values()) + sum(self._fresh_hangers(rule))
+        self.model.add(total <= rule.most - len(rule.always))
+
+    def _fresh_hangers(self, rule: MarkRule) -> list[cp_model.IntVar]:
+        """For each span with hangers whether they need a mark that no others have."""
+        lengths = [self._hanger_length(item) for item in rule.hung]
+        found = []
+        for mode, (item, fixed) in enumerate(zip(self.menu.modes, rule.fixed_hangers, strict=True)):
+            if item.mode.kind is not TopKind.HANGERS:
+                continue
+            for number, length in enumerate(lengths):
+                alike = []
+                for other in (*lengths[:number], *fixed):
+                    same = self.model.new_bool_var("as long")
+                    self.model.add(length == other).only_enforce_if(same)
+                    alike.append(same)
+                own = self.model.new_bool_var(f"hangers of span {number}, mode {mode}")
+                self.model.add_bool_or([own, *alike, self.modes[mode].negated()])
+                found.append(own)
+        return found
+
+    def _hanger_length(self, item: Hung) -> cp_model.LinearExprT:
+        """Length of the hangers of a span, linear in what is chosen at its supports."""
+        variables = [variable for place, _ in item.taken for variable in self.places[place]]
+        weights = [-value for _, taken in item.taken for value in taken]
+        return cp_model.LinearExpr.weighted_sum(variables, weights) + item.base
 
     def _add_laps(self) -> None:
         if len(self.menu.lapped) < 2:

@@ -20,6 +20,7 @@ from optimizer.beams.choice import Choice, Menu
 from optimizer.beams.fixed import fixed_pieces
 from optimizer.beams.frames import Frame
 from optimizer.beams.listing import Fitted, Listing
+from optimizer.beams.marks import mark_rule
 from optimizer.beams.modes import ModeBars, ModeBuilder
 from optimizer.beams.places import places
 from optimizer.beams.plans import ShearOfSpan, depth_for_shear, plan_as_drawn, plans_of_span
@@ -191,7 +192,10 @@ class FrameLists:
             offered, always, some, self._sagging(some), strict=True
         ):
             fixed = frozenset(where for where, number in enumerate(numbers) if number in own)
-            best = undominated(chosen, self.pools, fixed, clashes)
+            if self.problem.most_marks is None:
+                best = undominated(chosen, self.pools, fixed, clashes)
+            else:  # a dearer variant may share its marks with others
+                best = list(range(len(chosen)))
             kept.append([numbers[item] for item in best])
         return self.menu_of(kept), kept
 
@@ -229,6 +233,15 @@ class FrameLists:
             pairs=tuple(self._cantilever_pairs(chosen)),
             most_sizes=self.problem.most_sizes,
             constant=self.constant,
+            marks=mark_rule(
+                self.problem,
+                self.frame,
+                self.places,
+                chosen,
+                self.modes,
+                self.mode_builder,
+                self.fixed,
+            ),
         )
 
     def _cantilever_pairs(

@@ -195,7 +195,7 @@ class ModeBuilder:
         return max(0.0, 2.0 * reach / (self.shared.frame.legs - 1))
 
     def _hangers(self, bar: Bar) -> ModeBars:
-        length = sum(self.hanger_length(index, 0.0, 0.0) for index in self._hung())
+        length = sum(self.hanger_length(index, 0.0, 0.0) for index in self.hung())
         cost = length * self.shared.frame.legs / self.shared.unit
         return ModeBars(
             mode=TopMode(TopKind.HANGERS, bar),
@@ -203,7 +203,7 @@ class ModeBuilder:
             pieces=(),
         )
 
-    def _hung(self) -> list[int]:
+    def hung(self) -> list[int]:
         """Spans that hangers run along: those without long bars over their whole length."""
         found = []
         for index, span in enumerate(self.beam.spans):
@@ -266,7 +266,7 @@ class ModeBuilder:
             Hangers.
         """
         pieces = []
-        for span in self._hung():
+        for span in self.hung():
             origin = self.beam.origins[span]
             start, end = self.beam.clear_range(span)
             start, end = origin + start, origin + end

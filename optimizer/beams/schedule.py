@@ -95,6 +95,23 @@ class Schedule:
         return stock.cut(sizes, problem.stock, problem.work_limit, unit=unit)
 
 
+def letter_of(piece: Piece) -> str:
+    """Letter that the mark of a bar begins with.
+
+    Parameters
+    ----------
+    piece : Piece
+        Bar with its place.
+
+    Returns
+    -------
+    str
+        For example ``B`` at the bottom.
+    """
+    face = "B" if piece.face is Face.BOTTOM else "T"
+    return _LETTERS.get(piece.role, face)
+
+
 def shape_of(problem: BeamProblem, piece: Piece) -> BentBar:
     """Shape of a bar.
 
@@ -145,8 +162,7 @@ def schedule_of(
     counts: defaultdict[tuple[str, BentBar], int] = defaultdict(int)
     keys: list[tuple[str, BentBar]] = []
     for piece in pieces:
-        face = "B" if piece.face is Face.BOTTOM else "T"
-        key = (_LETTERS.get(piece.role, face), shape_of(problem, piece))
+        key = (letter_of(piece), shape_of(problem, piece))
         counts[key] += piece.count
         keys.append(key)
     loop_keys: list[list[tuple[str, BentBar]]] = []

@@ -357,7 +357,8 @@ class TopEnds:
             number = self.number(index)
             strength = self.strengths[number].of_run(bar, run).phi_Mn
             last = through[0].start if direction < 0 else through[-1].end
-            ld = self.developments[number].of(fitted.placements[number], 1, bar)
+            # The length that through bars have for all layouts.
+            ld = through[0].develop_start if direction < 0 else through[-1].develop_end
             if not _developed_at_tip(side, fitted.d[number], strength, abs(last - side.origin), ld):
                 return False
         return True
