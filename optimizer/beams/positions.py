@@ -14,7 +14,7 @@ from dataclasses import dataclass
 from engine.beams.spans import Beam
 from optimizer.beams.design import BeamDesign
 from optimizer.beams.frames import Frame
-from optimizer.beams.variants import Piece, StirrupPlan, TopMode, Variant
+from optimizer.beams.variants import Face, Piece, Role, StirrupPlan, TopMode, Variant
 
 TOP = "top bars between supports"
 """Name of the position of the arrangement of the top face."""
@@ -214,7 +214,7 @@ def _bars(design: BeamDesign) -> list[DrawnBars]:
     for place, variant in zip(design.places, design.chosen, strict=True):
         owners += [place.mark] * len(variant.pieces)
     rest = design.pieces[len(owners) :]
-    owners += [TOP if piece.role.value in ("through", "hanger") else OTHERS for piece in rest]
+    owners += [TOP if _of_top_face(piece) else OTHERS for piece in rest]
     found = []
     numbers: dict[str, int] = {}
 
@@ -240,6 +240,11 @@ def _bars(design: BeamDesign) -> list[DrawnBars]:
         for mark in marks:
             add(stirrups_mark(design.problem.beam, plan.span), "loop", mark, plan.count)
     return found
+
+
+def _of_top_face(piece: Piece) -> bool:
+    """Whether bars belong to the arrangement of the top face."""
+    return piece.face is Face.TOP and piece.role in (Role.THROUGH, Role.HANGER)
 
 
 def _part(piece: Piece) -> str:
