@@ -12,7 +12,7 @@ from optimizer.beams.reader import parse_beam_job
 from tests.beams.exhaustive.brute import BruteFrame, brute_force
 from tests.beams.exhaustive.jobs import small_job
 
-BEAMS, GROUP = 48, 6
+BEAMS, GROUP = 24, 6
 ROUNDING = 1e-3  # the model counts in ten-thousandths, a few dozen of them
 
 
