@@ -45,7 +45,7 @@ class BeamProblem:
     beam : Beam
         Spans, supports and loads.
     sections : tuple of Section
-        For each span its section, with a placeholder moment and the first stirrup size allowed.
+        For each span its section with the first stirrup size allowed; its moment says nothing.
     catalog : BarCatalog
         Catalogue of the sizes.
     rules : BarRules

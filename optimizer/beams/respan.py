@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass, replace
 
-from engine import check_layout
+from engine import Layout, check_layout
 from engine.check_row import Check
 from optimizer.beams.choice import Choice, Menu
 from optimizer.beams.design import BeamDesign, NoDesign, demands_of, finish, reasons, search
@@ -314,11 +314,11 @@ def _verdicts(frame: FrontierOfFrame, old: DrawnBeam) -> list[Verdict]:
     return found
 
 
-def _rows(place: Place, layout: object) -> tuple[Check, ...]:
+def _rows(place: Place, layout: Layout) -> tuple[Check, ...]:
     """Rows of the check of a layout in every section of its place, worst first."""
     rows: list[Check] = []
     for section in place.sections:
-        rows += check_layout(section, layout).checks  # type: ignore[arg-type]
+        rows += check_layout(section, layout).checks
     return tuple(sorted(rows, key=lambda row: (row.ok, -(row.ratio or 0.0))))
 
 
